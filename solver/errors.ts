@@ -1,0 +1,34 @@
+import type { Point } from '../mesher/index.ts';
+
+/** Every code a {@link SolverError} can carry. README.md lists each with its remedy; a test compares the lists. */
+export type SolverCode =
+  | 'DIFFUSION_NOT_POSITIVE'
+  | 'WALL_COEFFICIENT_NOT_POSITIVE'
+  | 'NO_WAY_OUT'
+  | 'START_OUTSIDE'
+  | 'START_ON_ABSORBING_WALL'
+  | 'NOT_CONVERGED'
+  | 'SOLVING_STOPPED';
+
+/** Where a problem is at fault. Kernels know numbers; `src/run` turns them into names of the drawing. */
+export interface SolverWhere {
+  readonly at?: readonly Point[];
+  readonly tags?: readonly number[];
+}
+
+/** A problem that has no answer as stated, or a solve that found none. */
+export class SolverError extends Error {
+  override readonly name = 'SolverError';
+  readonly code: SolverCode;
+  readonly what: string;
+  readonly where: SolverWhere;
+  readonly remedy: string;
+
+  constructor(code: SolverCode, what: string, where: SolverWhere, remedy: string, cause?: unknown) {
+    super(`${what}. ${remedy}`, { cause });
+    this.code = code;
+    this.what = what;
+    this.where = where;
+    this.remedy = remedy;
+  }
+}

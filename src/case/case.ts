@@ -1,0 +1,124 @@
+import type { Chain, Healing, Point } from '../../mesher/index.ts';
+import type { Coefficient, NoiseConvention } from '../../solver/index.ts';
+
+/** A value that the case states, converted to the case's own units, with how well it is known and where it is from. */
+export interface Stated {
+  readonly value: number;
+  /** Range of the input in the same unit, where the case gives one. */
+  readonly within?: readonly [low: number, high: number];
+  readonly source?: string;
+}
+
+/** Names of the case's units as printed; both empty for `"units": "none"`. */
+export interface CaseUnits {
+  readonly length: string;
+  readonly time: string;
+}
+
+/** The drawing after healing, in the case's length unit, y upwards. Pieces carry no meaning in their tags yet. */
+export interface Drawing {
+  /** Closed, counter-clockwise; s = 0 at the first point of its first piece. */
+  readonly outline: Chain;
+  /** Closed, clockwise (compartment on the left). */
+  readonly holes: readonly Chain[];
+  readonly innerWalls: readonly Chain[];
+  readonly regions: readonly Chain[];
+  readonly tolerance: number;
+  readonly healed: readonly Healing[];
+  /** What was taken from a drawing file and as what, in words; empty for typed shapes. */
+  readonly taken: readonly string[];
+  readonly leftOut: readonly string[];
+}
+
+/** What a wall does in a layout; coefficients in the case's units. */
+export type WallKind =
+  | { readonly kind: 'absorbing' }
+  | { readonly kind: 'reflecting' }
+  | { readonly kind: 'partlyAbsorbing'; readonly kappa: Stated }
+  | { readonly kind: 'permeable'; readonly permeability: Stated };
+
+/** Part of a loop by arc length s along it; `from` > `to` runs over the mark. */
+export interface Span {
+  readonly from: number;
+  readonly to: number;
+}
+
+/** A named wall: parts of one or more loops. */
+export interface NamedWall {
+  readonly name: string;
+  readonly as: 'pad' | 'opening';
+  readonly parts: readonly { readonly loop: string; readonly spans: readonly Span[] | 'whole' }[];
+}
+
+/** What one named wall does in one layout, and on which part of it (the rest reflects). */
+export interface Assignment {
+  readonly wall: NamedWall;
+  readonly kind: WallKind;
+}
+
+export interface Layout {
+  readonly name: string;
+  readonly assignments: readonly Assignment[];
+  /** Holes left out in this layout. */
+  readonly without: readonly string[];
+}
+
+export type Start =
+  | { readonly kind: 'evenIn'; readonly name: string; /** Index of a region, or everywhere. */ readonly region: number | 'everywhere' }
+  | { readonly kind: 'point'; readonly name: string; readonly at: Point }
+  | { readonly kind: 'spot'; readonly name: string; readonly at: Point; readonly radius: number };
+
+/** What is asked of a layout; times in the case's time unit, fractions 0..1. */
+export type Figure =
+  | { readonly kind: 'mean' }
+  | { readonly kind: 'standard deviation' }
+  | { readonly kind: 'median' }
+  | { readonly kind: 'time to'; readonly fraction: number }
+  | { readonly kind: 'share'; readonly wall: string; readonly by?: number }
+  | { readonly kind: 'time to leave by'; readonly wall: string; readonly fraction: number }
+  | { readonly kind: 'still inside'; readonly at: number }
+  | { readonly kind: 'time in'; readonly region: string }
+  | { readonly kind: 'decay time' };
+
+export interface Asked {
+  /** As written in the case. */
+  readonly text: string;
+  readonly figure: Figure;
+  readonly start: string;
+  readonly limit?: { readonly kind: 'under' | 'atLeast'; readonly value: number; readonly text: string };
+}
+
+export interface Accuracy {
+  /** Relative width of the bracket asked for. */
+  readonly bracket: number;
+  readonly nodes: number;
+  readonly seconds: number;
+  readonly paths: number;
+  readonly seed: number;
+}
+
+/** A case, checked and converted: right by construction, not checked again inside. */
+export interface Case {
+  readonly title: string;
+  readonly units: CaseUnits;
+  readonly drawing: Drawing;
+  readonly particle: {
+    readonly noise: NoiseConvention;
+    /** D outside every region that has its own. */
+    readonly diffusion: Coefficient;
+    /** By region index. */
+    readonly diffusionIn: ReadonlyMap<number, Coefficient>;
+  };
+  readonly walls: readonly NamedWall[];
+  readonly layouts: readonly Layout[];
+  readonly reference: string;
+  readonly starts: readonly Start[];
+  readonly pins: readonly { readonly name: string; readonly at: Point }[];
+  readonly asked: readonly Asked[];
+  readonly accuracy: Accuracy;
+  /** What the case asks for and this version does not compute yet, in words; told, never faked. */
+  readonly notAvailable: readonly string[];
+  readonly warnings: readonly string[];
+  /** SHA-256 of the resolved case (RFC 8785 form). */
+  readonly hash: string;
+}
