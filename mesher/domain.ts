@@ -20,7 +20,12 @@ export type Curve =
       readonly start: number;
       readonly sweep: number;
     }
-  | { readonly kind: 'cubic'; readonly from: Point; readonly to: Point; readonly controls: readonly [Point, Point] };
+  | {
+      readonly kind: 'cubic';
+      readonly from: Point;
+      readonly to: Point;
+      readonly controls: readonly [Point, Point];
+    };
 
 /** A curve with the number its wall segments will carry. What the number means is the caller's business. */
 export interface Piece {

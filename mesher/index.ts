@@ -1,3 +1,13 @@
+export {
+  chordSag,
+  curveLength,
+  directionAt,
+  nearestParameter,
+  parameterAtLength,
+  partOf,
+  pointAt,
+  reversed,
+} from './curves.ts';
 export type { Chain, Curve, Domain, Healing, Piece, Point } from './domain.ts';
 export { type MesherCode, MesherError, type MesherWhere } from './errors.ts';
 export type { Hooks } from './hooks.ts';
