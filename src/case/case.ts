@@ -64,7 +64,11 @@ export interface Layout {
 }
 
 export type Start =
-  | { readonly kind: 'evenIn'; readonly name: string; /** Index of a region, or everywhere. */ readonly region: number | 'everywhere' }
+  | {
+      readonly kind: 'evenIn';
+      readonly name: string /** Index of a region, or everywhere. */;
+      readonly region: number | 'everywhere';
+    }
   | { readonly kind: 'point'; readonly name: string; readonly at: Point }
   | { readonly kind: 'spot'; readonly name: string; readonly at: Point; readonly radius: number };
 

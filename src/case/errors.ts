@@ -1,5 +1,29 @@
 import type { Point } from '../../mesher/index.ts';
 
+/** Every code a {@link CaseError} can carry. README.md lists each with its remedy; a test compares the lists. */
+export const caseCodes = [
+  'CASE_TOO_LARGE',
+  'CASE_NOT_JSON',
+  'CASE_KEY_TWICE',
+  'CASE_KEY_UNKNOWN',
+  'CASE_KEY_MISSING',
+  'CASE_VALUE_WRONG',
+  'UNIT_WRONG',
+  'VALUE_OUT_OF_RANGE',
+  'EXPRESSION_REFUSED',
+  'NOISE_NOT_STATED',
+  'NAME_UNKNOWN',
+  'NAME_RESERVED',
+  'NAME_TWICE',
+  'FIGURE_NOT_UNDERSTOOD',
+  'WALL_KIND_NOT_POSSIBLE',
+  'WALL_KINDS_OVERLAP',
+  'WALL_EXTENT_WRONG',
+  'FILE_NOT_READ',
+] as const;
+
+export type CaseCode = (typeof caseCodes)[number];
+
 /** Where a case, drawing or request is at fault. */
 export interface Where {
   readonly at?: readonly Point[];
