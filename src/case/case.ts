@@ -28,6 +28,15 @@ export interface Drawing {
   /** What was taken from a drawing file and as what, in words; empty for typed shapes. */
   readonly taken: readonly string[];
   readonly leftOut: readonly string[];
+  /** What a person should look at, e.g. an outline that was only proposed. */
+  readonly warnings?: readonly string[];
+  /**
+   * Set when the case writes y downwards: every y in the case (points, expressions, conditions) is −y here, so that
+   * the drawing looks as drawn. Angles are counter-clockwise as seen, either way.
+   */
+  readonly writtenDown?: true;
+  /** Loops that were drawn twice: the second name means the loop that was kept. */
+  readonly sameAs?: ReadonlyMap<string, string>;
 }
 
 /** What a wall does in a layout; coefficients in the case's units. */

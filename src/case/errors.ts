@@ -20,6 +20,12 @@ export const caseCodes = [
   'WALL_KINDS_OVERLAP',
   'WALL_EXTENT_WRONG',
   'FILE_NOT_READ',
+  'DRAWING_TOO_LARGE',
+  'DRAWING_UNSAFE',
+  'DRAWING_NOT_READ',
+  'DRAWING_SCALE_MISSING',
+  'DRAWING_OUTLINE_UNCLEAR',
+  'LOOP_NOT_CLOSED',
 ] as const;
 
 export type CaseCode = (typeof caseCodes)[number];

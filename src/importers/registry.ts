@@ -14,14 +14,14 @@ export const drawingKinds: readonly string[] = [...readers.keys()];
  * What a drawing file holds, whatever its format.
  *
  * @param name of the file; its ending says the format
- * @throws {CaseError} DRAWING_FORMAT_UNKNOWN, or what the format's reader finds wrong
+ * @throws {CaseError} DRAWING_NOT_READ, or what the format's reader finds wrong
  */
 export function readDrawing(text: string, name: string): FoundDrawing {
   const ending = /\.[a-z0-9]+$/i.exec(name)?.[0].toLowerCase() ?? '';
   const reader = readers.get(ending);
   if (!reader) {
     throw new CaseError(
-      'DRAWING_FORMAT_UNKNOWN',
+      'DRAWING_NOT_READ',
       `${name} is no drawing that can be read`,
       { file: name },
       `Give a file that ends in ${drawingKinds.join(' or ')}`,

@@ -20,7 +20,7 @@ export const shapeElements: ReadonlySet<string> = new Set([
 /**
  * What an element draws, in its own frame (y downwards); more than one stroke only for a path.
  *
- * @throws {CaseError} SHAPE_NOT_READ with file and line
+ * @throws {CaseError} DRAWING_NOT_READ with file and line
  * Source: W3C, SVG 1.1 (second edition, 2011), chapters 8 and 9.
  */
 export function strokesOf(element: XmlElement, tag: DrawnElement, file: string): readonly Subpath[] {
@@ -109,7 +109,7 @@ function pointsOf(element: XmlElement, file: string): Point[] {
 
 function notRead(element: XmlElement, file: string, what: string): CaseError {
   return new CaseError(
-    'SHAPE_NOT_READ',
+    'DRAWING_NOT_READ',
     `${file} line ${element.line}, <${element.tag}>: ${what}`,
     { file, line: element.line },
     'Mend the element, or save the drawing again as plain SVG',

@@ -28,7 +28,7 @@ const millimetres: Readonly<Record<string, number>> = {
  *
  * A size without a unit, or in percent, says nothing physical: then there is no scale and it is asked.
  *
- * @throws {CaseError} DRAWING_SIZE_UNREADABLE
+ * @throws {CaseError} DRAWING_NOT_READ
  */
 export function readPage(svg: XmlElement, file: string): SvgPage {
   const width = lengthOf(svg, 'width', file);
@@ -106,7 +106,7 @@ function perUnitOf(length: Length | undefined, across: number): number | undefin
 
 function unreadable(file: string, line: number, what: string): CaseError {
   return new CaseError(
-    'DRAWING_SIZE_UNREADABLE',
+    'DRAWING_NOT_READ',
     `${file}: ${what}`,
     { file, line },
     'Give the page a size such as width="12mm"',

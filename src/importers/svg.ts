@@ -18,7 +18,7 @@ export function readSvg(text: string, file: string): FoundDrawing {
   const svg = readXml(text, file).find((element) => element.tag === 'svg');
   if (!svg) {
     throw new CaseError(
-      'DRAWING_NOT_SVG',
+      'DRAWING_NOT_READ',
       `${file} has no <svg> element`,
       { file, line: 1 },
       'Save the drawing as SVG',
@@ -137,7 +137,7 @@ class Walk {
 
   private refused(element: XmlElement, what: string): CaseError {
     return new CaseError(
-      'SHAPE_NOT_READ',
+      'DRAWING_NOT_READ',
       `${this.file} line ${element.line}, <${element.tag}>: ${what}`,
       { file: this.file, line: element.line },
       'Mend the element, or save the drawing again as plain SVG',

@@ -16,12 +16,12 @@ export const largestDrawing = 5_000_000;
 /**
  * Reads XML into a plain tree; entities beyond the five of XML and document types are refused, never followed.
  *
- * @throws {CaseError} DRAWING_TOO_BIG, DRAWING_HAS_DOCTYPE, DRAWING_NOT_XML
+ * @throws {CaseError} DRAWING_TOO_LARGE, DRAWING_UNSAFE, DRAWING_NOT_READ
  */
 export function readXml(text: string, file: string): XmlElement[] {
   if (text.length > largestDrawing) {
     throw new CaseError(
-      'DRAWING_TOO_BIG',
+      'DRAWING_TOO_LARGE',
       `${file} has ${(text.length / 1e6).toFixed(1)} MB; a drawing may have 5 MB`,
       { file },
       'Take pictures and unused parts out of the drawing',
@@ -30,7 +30,7 @@ export function readXml(text: string, file: string): XmlElement[] {
   const forbidden = /<!(DOCTYPE|ENTITY)/i.exec(text);
   if (forbidden) {
     throw new CaseError(
-      'DRAWING_HAS_DOCTYPE',
+      'DRAWING_UNSAFE',
       `${file} declares a document type or entities, which are not followed`,
       { file, line: lineAt(text, forbidden.index) },
       'Delete the <!DOCTYPE …> part; the shapes do not need it',
@@ -77,7 +77,7 @@ function elementOf(node: RawNode, lines: readonly number[]): XmlElement[] {
 
 function notXml(file: string, line: number | undefined, why: string, cause?: unknown): CaseError {
   return new CaseError(
-    'DRAWING_NOT_XML',
+    'DRAWING_NOT_READ',
     `${file} is not a well-formed XML file: ${why.replace(/\.$/, '')}`,
     line === undefined ? { file } : { file, line },
     'Save the drawing again as plain SVG',
