@@ -70,16 +70,30 @@ export interface Layout {
   readonly assignments: readonly Assignment[];
   /** Holes left out in this layout. */
   readonly without: readonly string[];
+  /** Regions that catch from below. */
+  readonly floors?: readonly { readonly region: string; readonly kappa: Stated }[];
+  /** Why this version cannot solve this layout, in words; absent when it can. */
+  readonly notAvailable?: readonly string[];
 }
 
 export type Start =
   | {
       readonly kind: 'evenIn';
-      readonly name: string /** Index of a region, or everywhere. */;
+      readonly name: string;
+      /** Index of a region, or everywhere. */
       readonly region: number | 'everywhere';
+      readonly notAvailable?: undefined;
     }
-  | { readonly kind: 'point'; readonly name: string; readonly at: Point }
-  | { readonly kind: 'spot'; readonly name: string; readonly at: Point; readonly radius: number };
+  | { readonly kind: 'point'; readonly name: string; readonly at: Point; readonly notAvailable?: undefined }
+  | {
+      readonly kind: 'spot';
+      readonly name: string;
+      readonly at: Point;
+      readonly radius: number;
+      readonly notAvailable?: undefined;
+    }
+  /** A start that this version cannot answer, and why. */
+  | { readonly kind: 'notYet'; readonly name: string; readonly notAvailable: readonly string[] };
 
 /** What is asked of a layout; times in the case's time unit, fractions 0..1. */
 export type Figure =
@@ -99,6 +113,16 @@ export interface Asked {
   readonly figure: Figure;
   readonly start: string;
   readonly limit?: { readonly kind: 'under' | 'atLeast'; readonly value: number; readonly text: string };
+  /** Why this version does not give the figure, in words; absent when it does. */
+  readonly notAvailable?: string;
+}
+
+/** What the answers are to hold beside what is always given. */
+export interface Report {
+  readonly survivalAt: readonly number[];
+  readonly occupationOf: readonly string[];
+  readonly moments: number;
+  readonly field: readonly Figure[];
 }
 
 export interface Accuracy {
@@ -121,6 +145,8 @@ export interface Case {
     readonly diffusion: Coefficient;
     /** By region index. */
     readonly diffusionIn: ReadonlyMap<number, Coefficient>;
+    /** D as stated, where it is a plain value: with its range and source. */
+    readonly stated?: Stated;
   };
   readonly walls: readonly NamedWall[];
   readonly layouts: readonly Layout[];
@@ -129,6 +155,7 @@ export interface Case {
   readonly pins: readonly { readonly name: string; readonly at: Point }[];
   readonly asked: readonly Asked[];
   readonly accuracy: Accuracy;
+  readonly report?: Report;
   /** What the case asks for and this version does not compute yet, in words; told, never faked. */
   readonly notAvailable: readonly string[];
   readonly warnings: readonly string[];

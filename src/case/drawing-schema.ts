@@ -1,22 +1,15 @@
 import Type from 'typebox';
-import {
-  angle,
-  choice,
-  coordinate,
-  length,
-  named,
-  object,
-  pair,
-  point,
-  varying,
-} from './schema-parts.ts';
+import { angle, choice, coordinate, length, named, object, pair, point, varying } from './schema-parts.ts';
 
 /** The part of a case's schema that states the drawing: typed shapes or a file. */
 
+/** Where s = 0 shall be: the nearest place of the shape to this point. */
+const mark = Type.Optional(point);
+
 export const shape = Type.Union(
   [
-    object({ path: Type.String({ description: 'SVG path data' }) }, '{ "path": "M 0 0 H 1 V 1 Z" }'),
-    object({ circle: point, radius: length('a radius') }, '{ "circle": [x, y], "radius": 0.5 }'),
+    object({ path: Type.String({ description: 'SVG path data' }), mark }, '{ "path": "M 0 0 H 1 V 1 Z" }'),
+    object({ circle: point, radius: length('a radius'), mark }, '{ "circle": [x, y], "radius": 0.5 }'),
     object(
       {
         rectangle: Type.Unsafe<[number | string, number | string, number | string, number | string]>({
@@ -26,19 +19,25 @@ export const shape = Type.Union(
           minItems: 4,
           description: 'two corners [x0, y0, x1, y1]',
         }),
+        mark,
       },
       '{ "rectangle": [x0, y0, x1, y1] }',
     ),
     object(
-      { ellipse: point, radii: pair(length('a radius'), 'two radii [a, b]'), turned: Type.Optional(angle) },
+      {
+        ellipse: point,
+        radii: pair(length('a radius'), 'two radii [a, b]'),
+        turned: Type.Optional(angle),
+        mark,
+      },
       '{ "ellipse": [x, y], "radii": [a, b] }',
     ),
     object(
-      { polygon: Type.Array(point, { minItems: 3, description: 'three or more points [[x, y], …]' }) },
+      { polygon: Type.Array(point, { minItems: 3, description: 'three or more points [[x, y], …]' }), mark },
       '{ "polygon": [[x, y], …] }',
     ),
     object(
-      { line: Type.Array(point, { minItems: 2, description: 'two or more points [[x, y], …]' }) },
+      { line: Type.Array(point, { minItems: 2, description: 'two or more points [[x, y], …]' }), mark },
       '{ "line": [[x, y], …] }',
     ),
   ],
