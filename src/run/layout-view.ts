@@ -133,8 +133,8 @@ function loopViews(domain: PlainDomain): LayoutPicture['loops'] {
 
 function startView(theCase: Case, start: Start): LayoutPicture['starts'][number] {
   const { name } = start;
-  if (start.kind !== 'evenIn') return { name, at: place(start.at) };
-  if (start.region === 'everywhere') return { name };
+  if (start.kind === 'point' || start.kind === 'spot') return { name, at: place(start.at) };
+  if (start.kind === 'notYet' || start.region === 'everywhere') return { name };
   const region = theCase.drawing.regions[start.region];
   return region === undefined ? { name } : { name, region: region.name };
 }

@@ -22,7 +22,12 @@ export interface SolveJob {
 
 export type SolveResult =
   | { readonly kind: 'answer'; readonly answer: PlainLayoutAnswer }
-  | { readonly kind: 'picture'; readonly view: LayoutPicture; readonly field: ArrayBuffer };
+  | {
+      readonly kind: 'picture';
+      readonly view: LayoutPicture;
+      readonly field: ArrayBuffer /** SHA-256. */;
+      readonly fieldHash: string;
+    };
 
 /** A thread that solves; see {@link WorkThread}. */
 export type SolvingThread = WorkThread<SolveJob, SolveResult>;

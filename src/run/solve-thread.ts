@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import type { Case } from '../case/case.ts';
 import { readCase } from '../case/read-case.ts';
 import { answerLayout } from './answer-layout.ts';
@@ -59,7 +60,8 @@ function answerInTime(theCase: Case, job: SolveJob, hooks: ThreadHooks): PlainLa
 function pictured(theCase: Case, job: SolveJob, answer: PlainLayoutAnswer): Handed<SolveResult> {
   const view = layoutView(theCase, job.layout, answer);
   const field = fieldBytes(answer.mesh.nodes, answer.mesh.triangles, answer.meanExitTime);
-  return { result: { kind: 'picture', view, field }, buffers: [field] };
+  const fieldHash = createHash('sha256').update(new Uint8Array(field)).digest('hex');
+  return { result: { kind: 'picture', view, field, fieldHash }, buffers: [field] };
 }
 
 function whole(answer: PlainLayoutAnswer): Handed<SolveResult> {
