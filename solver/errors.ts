@@ -4,6 +4,7 @@ import type { Point } from '../mesher/index.ts';
 export type SolverCode =
   | 'DIFFUSION_NOT_POSITIVE'
   | 'WALL_COEFFICIENT_NOT_POSITIVE'
+  | 'WALL_NOT_DESCRIBED'
   | 'NO_WAY_OUT'
   | 'START_OUTSIDE'
   | 'START_ON_ABSORBING_WALL'

@@ -1,0 +1,28 @@
+import type { Hooks } from '../../mesher/index.ts';
+import { solveOrThrow } from '../linear/prepare.ts';
+import type { System } from '../operator/system.ts';
+import { overAllNodes } from './fields.ts';
+
+/**
+ * For each exit the chance to leave through it: L p_i = 0 with p_i = 1 on absorbing walls of exit i, 0 on those of the
+ * others, n·D∇p_i + κ(p_i − δ) = 0 on partly absorbing ones. A node where two exits touch belongs half to each.
+ *
+ * On the discrete process p_i is the chance of its jumps, so at every node the fields sum to 1 (to rounding).
+ *
+ * @returns one field per exit, each with one entry per mesh node
+ * @throws {SolverError} NOT_CONVERGED, SOLVING_STOPPED
+ * Source: METHODS 3; Redner 2001 (splitting probabilities, recalled).
+ */
+export function exitShares(system: System, hooks: Hooks = {}): Float64Array[] {
+  const fields: Float64Array[] = [];
+  const { row, exit, rate } = system.sinks;
+  for (let e = 0; e < system.exitCount; e++) {
+    const rhs = new Float64Array(system.size);
+    for (let s = 0; s < row.length; s++) if (exit[s] === e) rhs[row[s]] += rate[s];
+    const field = overAllNodes(system, solveOrThrow(system, rhs, hooks));
+    const wall = system.absorbing;
+    for (let q = 0; q < wall.node.length; q++) if (wall.exit[q] === e) field[wall.node[q]] += wall.part[q];
+    fields.push(field);
+  }
+  return fields;
+}
