@@ -28,9 +28,15 @@ export interface Answers {
   readonly reversible: boolean;
   readonly mean: Answer;
   readonly shares: Readonly<Record<string, Answer>>;
-  readonly pins: Readonly<Record<string, { readonly mean: Answer; readonly shares: Readonly<Record<string, Answer>> }>>;
+  readonly pins: Readonly<
+    Record<string, { readonly mean: Answer; readonly shares: Readonly<Record<string, Answer>> }>
+  >;
   readonly asked: readonly AskedAnswer[];
-  readonly difference?: { readonly to: string; readonly value: number; readonly kind: 'guaranteed' | 'estimate' };
+  readonly difference?: {
+    readonly to: string;
+    readonly value: number;
+    readonly kind: 'guaranteed' | 'estimate';
+  };
   readonly mesh: {
     readonly nodes: number;
     readonly triangles: number;

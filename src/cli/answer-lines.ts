@@ -1,0 +1,117 @@
+import type { Asked, Case, Layout, Start } from '../case/case.ts';
+import { formatQuantity, readableUnit } from '../case/format-quantity.ts';
+import type { Answers } from '../run/answers.ts';
+import { askedOf, figureValue } from '../run/asked.ts';
+import { cautions } from '../run/cautions.ts';
+import { type Column, tableLines, wrapped } from './table.ts';
+
+const lineWidth = 100;
+
+/** The tables a person sees after `tarry solve`: one per figure asked, then where the particles end, then cautions. */
+export function answerLines(
+  theCase: Case,
+  layouts: readonly Layout[],
+  answers: readonly Answers[],
+  chosenStart: string | undefined,
+): string[] {
+  const lines: string[] = [theCase.title, ''];
+  const starts = theCase.starts.filter((one) => chosenStart === undefined || one.name === chosenStart);
+  for (const start of starts) {
+    const rows = answers.filter((one) => one.start === start.name);
+    const asked = askedOf(theCase, start.name, chosenStart !== undefined);
+    if (asked.length === 0) lines.push(...figureLines(theCase, start, undefined, layouts, rows), '');
+    for (const one of asked) lines.push(...figureLines(theCase, start, one, layouts, rows), '');
+    lines.push(...shareLines(theCase, start, rows), '');
+  }
+  lines.push('e: estimated, not proven.', '');
+  for (const text of theCase.notAvailable) lines.push(...wrapped(text, lineWidth, ''));
+  for (const text of theCase.warnings) lines.push(...wrapped(`Warning: ${text}`, lineWidth, ''));
+  lines.push(...wrapped(cautions.join(' '), lineWidth, ''));
+  return lines;
+}
+
+/** The start in words: 'released evenly in inlet bay'. */
+export function startWords(start: Start): string {
+  if (start.kind === 'evenIn') {
+    return start.region === 'everywhere' ? 'released evenly everywhere' : `released evenly in ${start.name}`;
+  }
+  return `released at ${start.name}`;
+}
+
+function figureLines(
+  theCase: Case,
+  start: Start,
+  asked: Asked | undefined,
+  layouts: readonly Layout[],
+  answers: readonly Answers[],
+): string[] {
+  const share = asked?.figure.kind === 'share';
+  const dimension = share ? 'fraction' : 'time';
+  const figureOf = (row: Answers) => (asked ? figureValue(asked, row) : row.mean);
+  const largest = Math.max(0, ...answers.map((row) => figureOf(row)?.value ?? 0));
+  const unit = readableUnit(largest, dimension, theCase.units);
+  const show = (value: number): string => formatQuantity(value, dimension, theCase.units, { unit });
+  const columns: Column[] = [
+    { title: 'layout', align: 'left' },
+    { title: share ? 'share' : 'time', align: 'right' },
+    { title: '', align: 'left' },
+    { title: asked?.limit ? 'verdict' : '', align: 'left' },
+    { title: 'against ref', align: 'right' },
+  ];
+  const rows = layouts.map((layout): string[] => {
+    const row = answers.find((one) => one.layout === layout.name);
+    const figure = row && figureOf(row);
+    if (!row || !figure) return [layout.name, 'not available yet'];
+    const mark = figure.kind === 'guaranteed' ? 's' : 'e';
+    return [
+      layout.name,
+      show(figure.value),
+      mark,
+      verdict(asked, figure.value, show),
+      against(theCase, row, asked, show),
+    ];
+  });
+  const limit = asked?.limit
+    ? `; must be ${asked.limit.kind === 'under' ? 'under' : 'at least'} ${asked.limit.text}`
+    : '';
+  return [`${figureWords(asked)}, ${startWords(start)}${limit}`, ...tableLines(columns, rows)];
+}
+
+function figureWords(asked: Asked | undefined): string {
+  return !asked || asked.figure.kind === 'mean' ? 'mean exit time' : asked.text;
+}
+
+function verdict(asked: Asked | undefined, value: number, show: (value: number) => string): string {
+  if (!asked?.limit) return '';
+  const { kind, value: limit } = asked.limit;
+  const spare = kind === 'under' ? limit - value : value - limit;
+  return spare >= 0 ? `meets, ${show(spare)} to spare` : `misses by ${show(-spare)}`;
+}
+
+function against(
+  theCase: Case,
+  row: Answers,
+  asked: Asked | undefined,
+  show: (value: number) => string,
+): string {
+  if (row.layout === theCase.reference) return 'ref';
+  // The difference of an answer is of its first asked figure only.
+  if (!row.difference || (asked && row.asked[0]?.figure !== asked.text)) return '';
+  const { value } = row.difference;
+  return value > 0 ? `+${show(value)}` : show(value);
+}
+
+function shareLines(theCase: Case, start: Start, answers: readonly Answers[]): string[] {
+  const rows = answers.map((row) => [
+    row.layout,
+    Object.entries(row.shares)
+      .map(([name, share]) => `${name} ${formatQuantity(share.value, 'fraction', theCase.units)}`)
+      .join(', '),
+  ]);
+  if (rows.length === 0) return [];
+  const columns: Column[] = [
+    { title: 'layout', align: 'left' },
+    { title: 'share of each exit', align: 'left' },
+  ];
+  return [`where they end, ${startWords(start)}`, ...tableLines(columns, rows)];
+}

@@ -1,0 +1,14 @@
+// `npm start`: installs and builds what is missing, answers the demo case in the terminal, serves the page.
+import { join } from 'node:path';
+import process from 'node:process';
+import { pathToFileURL } from 'node:url';
+import { build, installIfNeeded, root } from './install.mjs';
+
+installIfNeeded();
+build();
+
+const serve = !process.argv.includes('--no-serve');
+const { main } = await import(pathToFileURL(join(root, 'dist/src/cli/main.js')).href);
+const status = await main(['solve', join(root, 'meshes/capture-chamber.case.json')]);
+process.exitCode = status;
+if (status === 0 && serve) process.exitCode = await main(['serve']);

@@ -1,0 +1,27 @@
+// `npm test`: installs what is missing, gets a browser, builds, lints, type-checks and runs every test.
+import { spawnSync } from 'node:child_process';
+import { existsSync } from 'node:fs';
+import { join } from 'node:path';
+import process from 'node:process';
+import { build, installIfNeeded, root, run } from '../src/cli/install.mjs';
+
+/** A Chromium for the browser tests: one that is there, else Debian's where this is root, else the packaged one. */
+function getBrowser() {
+  if (process.env.TARRY_BROWSER || existsSync('/usr/bin/chromium')) return;
+  if (process.getuid?.() !== 0) return; // tests/support/browser.ts unpacks @sparticuz/chromium then
+  const apt = (...args) =>
+    spawnSync('apt-get', args, {
+      stdio: ['ignore', 'ignore', 2],
+      env: { ...process.env, DEBIAN_FRONTEND: 'noninteractive' },
+    });
+  process.stderr.write('Installing a browser for the browser tests …\n');
+  apt('update', '-qq');
+  apt('install', '-y', '-qq', '--no-install-recommends', 'chromium', 'fonts-liberation');
+}
+
+installIfNeeded();
+getBrowser();
+build();
+const bin = (name) => join(root, 'node_modules', '.bin', name);
+run(bin('biome'), ['ci', '.', '--diagnostic-level=error']);
+run(bin('vitest'), ['run', '--config', 'tests/vitest.config.ts', ...process.argv.slice(2)]);
