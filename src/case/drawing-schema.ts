@@ -47,10 +47,7 @@ export const shape = Type.Union(
   },
 );
 
-const shapeOrName = Type.Union([Type.String(), shape], {
-  description:
-    'the name of a shape in the drawing file, or a shape such as { "circle": [x, y], "radius": 0.5 }',
-});
+const shapeName = Type.String({ description: 'the name of a shape in the drawing file' });
 
 const tolerance = Type.Optional(length('the gap to be closed'));
 const depth = Type.Optional(varying('a depth such as "0.1 mm"'));
@@ -78,10 +75,9 @@ const fileDrawing = object(
       description: 'a .svg, .geojson or .wkt file beside the case, such as "chamber.svg"',
     }),
     take: Type.Optional(textOrTexts('the layer or layers to take, by name')),
-    outline: Type.Optional(shapeOrName),
-    holes: Type.Optional(named(shapeOrName, 'holes by name')),
-    innerWalls: Type.Optional(named(shapeOrName, 'inner walls by name')),
-    regions: Type.Optional(named(shapeOrName, 'regions by name')),
+    outline: Type.Optional(shapeName),
+    innerWalls: Type.Optional(named(shapeName, 'inner walls by name')),
+    regions: Type.Optional(named(shapeName, 'regions by name')),
     ignore: Type.Optional(textOrTexts('names of shapes to leave out')),
     scale: Type.Optional(
       object(
@@ -95,7 +91,6 @@ const fileDrawing = object(
         'a scale: { "between": [[10, 20], [610, 20]], "is": "1.20 mm" }',
       ),
     ),
-    y: up,
     tolerance,
     depth,
   },

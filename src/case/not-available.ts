@@ -1,0 +1,43 @@
+/**
+ * What a case may state and this version does not compute yet. It is accepted and told, never refused and never
+ * dropped in silence. An issue that computes one of these takes its line out of this table; what depends on it then
+ * is no longer held back.
+ */
+const words = {
+  drift: 'drift',
+  loss: 'loss',
+  tensor: 'a diffusion tensor',
+  depth: 'a depth that varies',
+  floor: 'regions that catch from below',
+  permeable: 'permeable inner walls',
+  'density start': 'starts by a density',
+  'table start': 'starts from a table',
+  'standard deviation': 'the standard deviation',
+  median: 'the median time',
+  'time to': 'times to N %',
+  'share by': 'shares by a time',
+  'time to leave by': 'times for N % to leave by one wall',
+  'still inside': 'the chance of still being inside',
+  'time in': 'the time in a region',
+  'decay time': 'the decay time',
+  within: 'what ranges of inputs do to the answers',
+  bracket: 'a bracket asked for (values are estimates)',
+  paths: 'the check by trajectories',
+  survivalAt: 'survival at given times',
+  occupationOf: 'the time spent in regions',
+  moments: 'higher moments',
+  field: 'fields other than mean and shares',
+} as const;
+
+export type NotYet = keyof typeof words;
+
+/**
+ * Says that something is not available yet, or undefined when it is.
+ *
+ * @param what a name of the table; anything else is available
+ * @param place where the case asks for it, e.g. `layout "coated post", baffle`
+ */
+export const notYet = (what: string, place: string): string | undefined =>
+  isNotYet(what) ? `${words[what]} (${place}): not available yet` : undefined;
+
+const isNotYet = (what: string): what is NotYet => Object.hasOwn(words, what);
