@@ -48,8 +48,9 @@ export function drawingCase(upload: DrawnUpload): {
 /** The last part of the name given, ending in .svg. */
 function drawingName(name: string): string {
   const last = name.split(/[/\\]/).at(-1)?.replace(/\p{C}/gu, '').trim() ?? '';
-  if (/[^.\s].*\.svg$/i.test(last)) return last;
-  return /[^.\s]/.test(last) ? `${last}.svg` : 'drawing.svg';
+  const stem = last.replace(/\.svg$/i, '');
+  if (!/[^.\s]/.test(stem)) return 'drawing.svg';
+  return stem === last ? `${stem}.svg` : last;
 }
 
 /** One named wall per catching loop; names that the case file keeps for itself get another. */
