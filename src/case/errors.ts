@@ -25,7 +25,6 @@ export const caseCodes = [
   'DRAWING_NOT_READ',
   'DRAWING_SCALE_MISSING',
   'DRAWING_OUTLINE_UNCLEAR',
-  'LOOP_NOT_CLOSED',
 ] as const;
 
 export type CaseCode = (typeof caseCodes)[number];
