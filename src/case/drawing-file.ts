@@ -6,7 +6,7 @@ import { tellRoles } from '../importers/roles.ts';
 import { type DrawingContext, readPoint } from './drawing-context.ts';
 import { joinKey } from './key-path.ts';
 import { suggestName } from './nearest-name.ts';
-import type { Shape } from './shapes.ts';
+import { readShape, type Shape } from './shapes.ts';
 import { smallestGap } from './smallest-gap.ts';
 
 /** The keys of a `drawing` that names a file. */
@@ -14,6 +14,9 @@ export interface FileDrawing {
   readonly file?: unknown;
   readonly take?: unknown;
   readonly outline?: unknown;
+  /** Names given to shapes of the file, or further shapes typed in; other closed shapes inside are holes too. */
+  readonly holes?: unknown;
+  readonly y?: unknown;
   readonly regions?: unknown;
   readonly innerWalls?: unknown;
   readonly ignore?: unknown;
@@ -59,6 +62,8 @@ class Taking {
   private readonly file: string;
   private readonly raw: FileDrawing;
   private readonly ctx: DrawingContext;
+  /** Shapes typed in beside the file, by what stands for them among the found ones. */
+  private readonly typed = new Map<FoundShape, Shape>();
   private readonly parts: FilePart[] = [];
   private readonly taken: string[] = [];
   private readonly leftOut: string[] = [];
@@ -76,15 +81,15 @@ class Taking {
   run(): ShapesOfFile {
     const ignored = this.ignored();
     const pool = this.taking().filter((shape) => !ignored.has(shape));
-    const regions = this.named('regions');
+    const holes = this.named('holes');
     const innerWalls = this.named('innerWalls');
-    const spoken = new Set([...regions, ...innerWalls].map(([, shape]) => shape));
-    const outline =
-      this.raw.outline === undefined ? undefined : this.shapeNamed(this.raw.outline, 'drawing.outline');
+    const regions = this.named('regions');
+    const spoken = new Set([...holes, ...innerWalls, ...regions].map(({ shape }) => shape));
+    const { outline: wanted } = this.raw;
+    const outline = wanted === undefined ? undefined : this.shapeFor('outline', wanted, 'drawing.outline');
     if (outline && !outline.closed) this.refuseOpen(outline, 'drawing.outline');
-    const candidates = pool.filter((shape) => !spoken.has(shape) || shape === outline);
-    if (outline && !candidates.includes(outline)) candidates.push(outline);
-    const roles = tellRoles(candidates, outline);
+    const candidates = pool.filter((shape) => !spoken.has(shape) && shape !== outline);
+    const roles = tellRoles(outline ? [...candidates, outline] : candidates, outline);
     if ('unclear' in roles) return this.refuseUnclear(roles.unclear, roles.candidates);
     if (roles.proposed) {
       const line = `outline proposed: "${roles.outline.name}" of ${this.file}; say "outline" in the drawing to settle it`;
@@ -92,14 +97,10 @@ class Taking {
     }
     this.add(loopName(roles.outline, 'outline'), 'outline', roles.outline, 'drawing.outline');
     this.addHoles(roles.holes);
-    for (const [name, shape] of innerWalls)
-      this.add(name, 'inner wall', shape, joinKey('drawing', 'innerWalls', name));
-    for (const [name, shape] of regions) {
-      const key = joinKey('drawing', 'regions', name);
-      if (!shape.closed) this.refuseOpen(shape, key);
-      this.add(name, 'region', shape, key);
-    }
-    this.reportLeftOut(pool, ignored, spoken, roles.others);
+    for (const { name, shape, key } of holes) this.add(name, 'hole', this.closed(shape, key), key);
+    for (const { name, shape, key } of innerWalls) this.add(name, 'inner wall', shape, key);
+    for (const { name, shape, key } of regions) this.add(name, 'region', this.closed(shape, key), key);
+    this.reportLeftOut(pool, ignored, new Set([...spoken, roles.outline]), roles.others);
     this.taken.push(`scale: ${this.scale.words}`, `coordinates: ${this.found.frame}`);
     const gap = smallestGap(this.parts.filter(({ role }) => role !== 'region'));
     if (gap) this.taken.push(`smallest gap: ${this.show(gap.gap)}, between "${gap.between.join('" and "')}"`);
@@ -115,15 +116,9 @@ class Taking {
   }
 
   private add(name: string, role: FilePart['role'], found: FoundShape, key: string): void {
-    const k = this.scale.factor;
-    const curves = found.curves.map((curve) => mapCurve([k, 0, 0, k, 0, 0], curve));
-    this.parts.push({
-      name,
-      role,
-      key,
-      shape: { kind: 'path', curves, closed: found.closed },
-      hasWinding: false,
-    });
+    const shape = this.typed.get(found) ?? scaled(found, this.scale.factor);
+    const { curves } = shape;
+    this.parts.push({ name, role, key, shape, hasWinding: false });
     const [low, high] = boxOf(curves);
     const size = `${this.show(high[0] - low[0], false)} × ${this.show(high[1] - low[1])}`;
     this.taken.push(`"${name}": ${role}, ${size} (${placeOf(found, name)})`);
@@ -156,37 +151,60 @@ class Taking {
     return this.ctx.fail('NAME_UNKNOWN', `${this.file} has no shape or group "${name}"`, key, remedy);
   }
 
-  private named(key: 'regions' | 'innerWalls'): (readonly [name: string, shape: FoundShape])[] {
-    const raw = this.raw[key];
+  private named(
+    group: 'holes' | 'innerWalls' | 'regions',
+  ): { name: string; shape: FoundShape; key: string }[] {
+    const raw = this.raw[group];
     if (raw === undefined) return [];
     if (typeof raw !== 'object' || raw === null || Array.isArray(raw)) {
       const remedy = 'Give { "name in the case": "shape in the file" }';
       return this.ctx.fail(
         'CASE_VALUE_WRONG',
-        `${key} of a file are given by name`,
-        `drawing.${key}`,
+        `${group} of a file are given by name`,
+        `drawing.${group}`,
         remedy,
       );
     }
     return Object.entries(raw).map(([name, wanted]) => {
-      return [name, this.shapeNamed(wanted, joinKey('drawing', key, name))] as const;
+      const key = joinKey('drawing', group, name);
+      return { name, shape: this.shapeFor(name, wanted, key), key };
     });
   }
 
-  private shapeNamed(wanted: unknown, key: string): FoundShape {
-    const name = textOf(wanted, key, this.ctx);
-    const shape = this.found.shapes.find((each) => each.name === name);
+  /** A shape of the file by its name, or one typed in, which lies in the case's own coordinates. */
+  private shapeFor(name: string, wanted: unknown, key: string): FoundShape {
+    if (typeof wanted !== 'string') {
+      const { y } = this.raw;
+      const shape = readShape(wanted, key, y === 'up' || y === 'down' ? y : undefined, this.ctx);
+      const k = 1 / this.scale.factor;
+      const found: FoundShape = {
+        name,
+        isNamed: true,
+        element: shape.kind,
+        line: 0,
+        groups: [],
+        curves: shape.curves.map((curve) => mapCurve([k, 0, 0, k, 0, 0], curve)),
+        closed: shape.closed || shape.kind === 'path',
+      };
+      this.typed.set(found, shape);
+      return found;
+    }
+    const shape = this.found.shapes.find((each) => each.name === wanted);
     if (shape) return shape;
     const known = this.found.shapes.map((each) => each.name);
-    const remedy = suggestName(name, known, 'shape');
-    return this.ctx.fail('NAME_UNKNOWN', `${this.file} has no shape "${name}"`, key, remedy);
+    const remedy = suggestName(wanted, known, 'shape');
+    return this.ctx.fail('NAME_UNKNOWN', `${this.file} has no shape "${wanted}"`, key, remedy);
+  }
+
+  private closed(shape: FoundShape, key: string): FoundShape {
+    return shape.closed ? shape : this.refuseOpen(shape, key);
   }
 
   private refuseOpen(shape: FoundShape, key: string): never {
     const ends = [shape.curves[0]?.from, shape.curves.at(-1)?.to].map((p) => (p ? this.show2(p) : ''));
     return this.ctx.fail(
       'LOOP_OPEN',
-      `"${shape.name}" (${this.file} line ${shape.line}) is an open line from ${ends.join(' to ')}`,
+      `"${shape.name}" (${this.file}, ${placeOf(shape, shape.name)}) is an open line from ${ends.join(' to ')}`,
       key,
       'Close it in the drawing, or fill it',
     );
@@ -214,7 +232,7 @@ class Taking {
       this.leftOut.push(`"${shape.name}" (${placeOf(shape, shape.name)}): ${why}`);
     for (const { shape, why } of others) tell(shape, why);
     for (const shape of this.found.shapes) {
-      if (spoken.has(shape) || this.raw.outline === shape.name) continue;
+      if (spoken.has(shape)) continue;
       if (ignored.has(shape)) tell(shape, 'ignored');
       else if (!pool.includes(shape)) tell(shape, 'not in what is taken');
       else if (!shape.closed) tell(shape, 'open line; name it under "innerWalls" to take it');
@@ -282,12 +300,21 @@ function scaleOf(
   );
 }
 
+function scaled(found: FoundShape, k: number): Shape {
+  return {
+    kind: 'path',
+    curves: found.curves.map((curve) => mapCurve([k, 0, 0, k, 0, 0], curve)),
+    closed: found.closed,
+  };
+}
+
 function loopName(shape: FoundShape, unnamed: string): string {
   return shape.isNamed ? shape.name : unnamed;
 }
 
 /** Element and line, and the name in the file where the case calls it something else. */
 function placeOf(shape: FoundShape, name: string): string {
+  if (shape.line === 0) return `${shape.element}, typed in`;
   return `${shape.name === name ? '' : `"${shape.name}", `}${shape.element}, line ${shape.line}`;
 }
 
