@@ -141,6 +141,14 @@ export function factorToCase(unit: string, dimension: Dimension, units: CaseUnit
       `Here ${nameOf(dimension)} is expected: give one such as ${example}`,
     );
   }
+  if (units.length === '') {
+    if (text === '1') return one;
+    return refuse(
+      'UNIT_WRONG',
+      `${JSON.stringify(text)} is a unit, but this case is without units ("units": "none")`,
+      'Give a plain number, or state the units of the case',
+    );
+  }
   const [length, time] = powersOf(dimension);
   if (meaning.powers[0] !== length || meaning.powers[1] !== time) {
     const unit = unitText(meaning.powers, { length: 'length', time: 'time' });
@@ -148,14 +156,6 @@ export function factorToCase(unit: string, dimension: Dimension, units: CaseUnit
       'UNIT_WRONG',
       `${JSON.stringify(text)} is ${unit === '' ? 'a plain number' : unit}, but ${nameOf(dimension)} is ${unitText([length, time], { length: 'length', time: 'time' }) || 'a plain number'}`,
       `Give one such as ${example}`,
-    );
-  }
-  if (units.length === '') {
-    if (length === 0 && time === 0) return one;
-    return refuse(
-      'UNIT_WRONG',
-      `${JSON.stringify(text)} is a unit, but this case is without units ("units": "none")`,
-      'Give a plain number, or state the units of the case',
     );
   }
   return ratioOfUnits(text, unitText([length, time], units)) ?? one;
