@@ -78,8 +78,10 @@ export function layoutView(theCase: Case, layout: string, answer: PlainLayoutAns
 function catchingDensity(mesh: Mesh, domain: PlainDomain, caught: Float64Array): Float64Array {
   const { nodes, segments, segmentTag } = mesh;
   const count = segmentTag.length;
-  const catching = (s: number): boolean =>
-    (domain.pieces.get(segmentTag[s] ?? -1)?.physics.kind ?? 'reflecting') !== 'reflecting';
+  const catching = (s: number): boolean => {
+    const kind = domain.pieces.get(segmentTag[s] ?? -1)?.physics.kind;
+    return kind === 'absorbing' || kind === 'partlyAbsorbing';
+  };
   const lengthAt = new Float64Array(nodes.length / 2);
   for (let s = 0; s < count; s++) {
     if (!catching(s)) continue;

@@ -9,6 +9,8 @@ export interface Stretch {
   kind: 'absorbing' | 'reflecting' | 'partlyAbsorbing';
   /** Reactivity with its unit. */
   kappa?: string;
+  /** For an inner wall that lets particles through: with kind 'reflecting', as it catches none. */
+  permeability?: string;
   /** Arc length on the loop where the stretch begins and ends; `from` > `to` runs over the mark or back along it. */
   from: number;
   to: number;
@@ -116,13 +118,14 @@ function follows(mesh: Mesh, before: Side, after: Side): boolean {
   return (
     a.wall === b.wall &&
     a.physics.kind === b.physics.kind &&
-    kappaOf(a) === kappaOf(b) &&
+    coefficientOf(a) === coefficientOf(b) &&
     mesh.segments[2 * lastSegment + 1] === mesh.segments[2 * firstSegment]
   );
 }
 
-function kappaOf(piece: WallPiece): number | undefined {
-  return piece.physics.kind === 'partlyAbsorbing' ? piece.physics.kappa : undefined;
+function coefficientOf({ physics }: WallPiece): number | undefined {
+  if (physics.kind === 'partlyAbsorbing') return physics.kappa;
+  return physics.kind === 'permeable' ? physics.permeability : undefined;
 }
 
 function stretchOf(mesh: Mesh, run: readonly Side[], segments: readonly number[], units: CaseUnits): Stretch {
@@ -130,7 +133,7 @@ function stretchOf(mesh: Mesh, run: readonly Side[], segments: readonly number[]
   const last = run.at(-1);
   if (first === undefined || last === undefined) throw new Error('A stretch has at least one piece.');
   const { piece } = first;
-  const kappa = kappaOf(piece);
+  const { physics } = piece;
   const unit = units.length === '' ? '' : ` ${units.length}/${units.time}`;
   const node = (n: number): [number, number] => [mesh.nodes[2 * n] ?? 0, mesh.nodes[2 * n + 1] ?? 0];
   const points = segments.map((s) => node(mesh.segments[2 * s] ?? 0));
@@ -138,8 +141,9 @@ function stretchOf(mesh: Mesh, run: readonly Side[], segments: readonly number[]
   return {
     loop: piece.loop,
     ...(piece.wall !== undefined && { name: piece.wall }),
-    kind: piece.physics.kind,
-    ...(kappa !== undefined && { kappa: `${kappa}${unit}` }),
+    kind: physics.kind === 'permeable' ? 'reflecting' : physics.kind,
+    ...(physics.kind === 'partlyAbsorbing' && { kappa: `${physics.kappa}${unit}` }),
+    ...(physics.kind === 'permeable' && { permeability: `${physics.permeability}${unit}` }),
     from: first.from,
     to: last.to,
     points,

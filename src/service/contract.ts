@@ -13,6 +13,8 @@ export const WallView = Type.Object({
   kind: Type.Union([Type.Literal('absorbing'), Type.Literal('reflecting'), Type.Literal('partlyAbsorbing')]),
   /** Reactivity with its unit, for a partly absorbing wall. */
   kappa: Type.Optional(Type.String()),
+  /** For an inner wall that lets particles through: with kind 'reflecting', as it catches none. */
+  permeability: Type.Optional(Type.String()),
   /** Arc length on the loop at both ends. */
   from: Type.Number(),
   to: Type.Number(),
@@ -153,6 +155,8 @@ export const CaseUpload = Type.Union([
   Type.Object(
     {
       case: Type.String(),
+      /** Name of the case file, for messages. */
+      name: Type.Optional(Type.String({ maxLength: 200 })),
       /** Text of the drawing files that the case names, by that name. */
       files: Type.Optional(Type.Record(Type.String({ maxLength: 200 }), Type.String(), { maxProperties: 8 })),
     },

@@ -4,16 +4,13 @@ import { type SolvingThread, solvingThread } from '../run/run-in-thread.ts';
 import type { CaseUpload, CaseView, JobView, LayoutView } from './contract.ts';
 import { drawingCase } from './drawing-case.ts';
 import { JobBoard, type Watch } from './job-board.ts';
-import { Reading } from './reading.ts';
+import { type CaseText, Reading } from './reading.ts';
 import type { Sample } from './samples.ts';
 import { Shelf } from './shelf.ts';
 
 /** A case as the service keeps it: as text, with what the page says about it. */
-interface KeptCase {
+interface KeptCase extends CaseText {
   readonly view: CaseView;
-  readonly text: string;
-  readonly file: string;
-  readonly files: Readonly<Record<string, string>>;
 }
 
 /** A solved layout as the service keeps it. */
@@ -56,15 +53,19 @@ export class Desk {
     if ('svg' in upload) {
       checkSize(upload.svg, LARGEST_DRAWING, 'drawing');
       const { text, file, files } = drawingCase(upload);
-      return this.#keep(text, file, files);
+      return this.#keep({ text, file, files });
     }
     checkSize(upload.case, LARGEST_CASE, 'case');
     for (const drawing of Object.values(upload.files ?? {})) checkSize(drawing, LARGEST_DRAWING, 'drawing');
-    return this.#keep(upload.case, 'case', upload.files ?? {});
+    return this.#keep({
+      text: upload.case,
+      ...(upload.name !== undefined && { file: upload.name }),
+      files: upload.files ?? {},
+    });
   }
 
   openSample({ text, file, files }: Sample): Promise<CaseView> {
-    return this.#keep(text, file, files);
+    return this.#keep({ text, file, files });
   }
 
   /** @throws {CaseError} UNKNOWN_CASE */
@@ -118,22 +119,20 @@ export class Desk {
     await Promise.all([this.reading.close(), ...this.#threads.map((thread) => thread.close())]);
   }
 
-  async #keep(text: string, file: string, files: Readonly<Record<string, string>>): Promise<CaseView> {
-    const view = await this.reading.case(text, file, files);
-    const bytes = text.length + Object.values(files).reduce((sum, one) => sum + one.length, 0);
-    this.#cases.put(view.id, { view, text, file, files }, bytes);
+  async #keep(given: CaseText): Promise<CaseView> {
+    const view = await this.reading.case(given);
+    const bytes = [given.text, ...Object.values(given.files)].reduce((sum, one) => sum + one.length, 0);
+    this.#cases.put(view.id, { ...given, view }, bytes);
     return view;
   }
 
   async #solve(slot: number, caseId: string, layout: string, watch: Watch): Promise<void> {
-    const { text, file, files } = this.#case(caseId);
+    const { view: _view, ...given } = this.#case(caseId);
     const thread = this.#threads[slot];
     if (thread === undefined) throw new Error(`There is no thread ${slot}.`);
     const result = await thread.run(
       {
-        text,
-        file,
-        files,
+        ...given,
         layout,
         at: new Date().toISOString(),
         command: 'tarry serve',

@@ -1,12 +1,27 @@
 import type { FastifyReply, FastifyRequest } from 'fastify';
+import { CaseError } from '../case/errors.ts';
 import { isEnded, type JobBoard, type JobState } from './job-board.ts';
 
 /** Milliseconds between the comments that keep a silent stream open. */
 const HEARTBEAT_MS = 15_000;
 
-/** Ends every open stream; the server does it before it closes. */
+/** Most streams open at once: each holds a connection. */
+const MOST_STREAMS = 200;
+
+/** The streams that are open; the server ends them before it closes. */
 export class OpenStreams {
   readonly #ends = new Set<() => void>();
+
+  /** @throws {CaseError} TOO_MUCH_WAITING */
+  checkRoom(): void {
+    if (this.#ends.size < MOST_STREAMS) return;
+    throw new CaseError(
+      'TOO_MUCH_WAITING',
+      'More pages follow the work than the service takes on',
+      {},
+      'Close pages that are no longer needed, or ask for the state of the job instead',
+    );
+  }
 
   add(end: () => void): () => void {
     this.#ends.add(end);
@@ -38,6 +53,7 @@ export function streamJob(
     void reply.code(204).send();
     return;
   }
+  streams.checkRoom();
   reply.hijack();
   const out = reply.raw;
   out.writeHead(200, {

@@ -10,7 +10,8 @@ import type { ReadingJob, ReadingResult } from './reading.ts';
 serveThread<ReadingJob, ReadingResult>((job) => {
   switch (job.kind) {
     case 'case': {
-      const theCase = readCase(job.text, { file: job.file, readFile: givenFiles(job.files) });
+      const { text, file, files } = job.given;
+      const theCase = readCase(text, { ...(file !== undefined && { file }), readFile: givenFiles(files) });
       return { result: { kind: 'case', view: caseView(theCase) }, buffers: [] };
     }
     case 'drawing':

@@ -3,14 +3,18 @@ import { threadFile } from '../run/thread-file.ts';
 import { WorkThread } from '../run/work-thread.ts';
 import type { CaseView, DrawingView } from './contract.ts';
 
+/** A case file and what it needs, as text from outside. */
+export interface CaseText {
+  readonly text: string;
+  /** Name of the case file, for messages; absent where none was given. */
+  readonly file?: string;
+  /** Contents of the files that the case names, by that name. */
+  readonly files: Readonly<Record<string, string>>;
+}
+
 /** What the reading thread is given: text from outside, which is parsed nowhere else. */
 export type ReadingJob =
-  | {
-      readonly kind: 'case';
-      readonly text: string;
-      readonly file: string;
-      readonly files: Readonly<Record<string, string>>;
-    }
+  | { readonly kind: 'case'; readonly given: CaseText }
   | { readonly kind: 'drawing'; readonly svg: string; readonly name: string };
 
 export type ReadingResult =
@@ -34,8 +38,8 @@ export class Reading {
   #waiting = 0;
 
   /** @throws {WorkError} by the promise, when the text is refused; {CaseError} TOO_MUCH_WAITING */
-  async case(text: string, file: string, files: Readonly<Record<string, string>>): Promise<CaseView> {
-    const result = await this.#inTurn({ kind: 'case', text, file, files });
+  async case(given: CaseText): Promise<CaseView> {
+    const result = await this.#inTurn({ kind: 'case', given });
     if (result.kind !== 'case') throw new Error('The reading thread gave a drawing for a case.');
     return result.view;
   }

@@ -111,9 +111,13 @@ export function jobRoutes(service: Service, { desk, streams }: Behind): void {
     desk.jobs.cancel(params.id),
   );
 
-  service.get('/api/jobs/:id/events', { schema: { params: jobParams } }, (request, reply) => {
-    streamJob(request, reply, desk.jobs, request.params.id, streams);
-  });
+  service.get(
+    '/api/jobs/:id/events',
+    { schema: { params: jobParams }, exposeHeadRoute: false },
+    (request, reply) => {
+      streamJob(request, reply, desk.jobs, request.params.id, streams);
+    },
+  );
 
   service.get('/health', async () => ({ status: 'ok', version, ...desk.jobs.counts }));
 }

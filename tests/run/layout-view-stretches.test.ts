@@ -10,7 +10,7 @@ const reflecting: Wall = { kind: 'reflecting' };
 const absorbing: Wall = { kind: 'absorbing', exit: 0 };
 const weak: Wall = { kind: 'partlyAbsorbing', kappa: 0.002, exit: 1 };
 
-/** Unit square from (0, 0), its lower side in two halves, tags 0 to 4 in order; a wall across its middle, tag 5. */
+/** Unit square from (0, 0), its lower side in two halves, tags 0 to 4 in order; a wall across its middle, tags 5, 6. */
 const outline: Chain = {
   name: 'outline',
   pieces: [
@@ -21,10 +21,13 @@ const outline: Chain = {
     line([0, 1], [0, 0], 4),
   ],
 };
-const baffle: Chain = { name: 'baffle', pieces: [line([0.25, 0.5], [0.75, 0.5], 5)] };
+const baffle: Chain = {
+  name: 'baffle',
+  pieces: [line([0.25, 0.5], [0.5, 0.5], 5), line([0.5, 0.5], [0.75, 0.5], 6)],
+};
 const lengths = [0.5, 0.5, 1, 1, 1];
 
-/** Wall segments only: stretches ask for nothing else of a mesh. Segments are shuffled; the baffle has two a side. */
+/** Wall segments only: stretches ask for nothing else of a mesh. Segments are shuffled. */
 const places: Point[] = [
   [0, 0],
   [0.5, 0],
@@ -35,17 +38,19 @@ const places: Point[] = [
   [0.75, 0.5],
   [0.5, 0.5],
   [0.5, 0.5],
+  [0.5, 1],
 ];
 const segments = [
   { ends: [4, 0], tag: 4, span: [0, 1] },
-  { ends: [7, 6], tag: 5, span: [0.5, 1] },
-  { ends: [5, 7], tag: 5, span: [0, 0.5] },
+  { ends: [7, 6], tag: 6, span: [0, 1] },
+  { ends: [5, 7], tag: 5, span: [0, 1] },
   { ends: [0, 1], tag: 0, span: [0, 1] },
   { ends: [2, 3], tag: 2, span: [0, 1] },
-  { ends: [8, 5], tag: 5, span: [0.5, 0] },
+  { ends: [8, 5], tag: 5, span: [1, 0] },
   { ends: [1, 2], tag: 1, span: [0, 1] },
-  { ends: [6, 8], tag: 5, span: [1, 0.5] },
-  { ends: [3, 4], tag: 3, span: [0, 1] },
+  { ends: [6, 8], tag: 6, span: [1, 0] },
+  { ends: [9, 4], tag: 3, span: [0.5, 1] },
+  { ends: [3, 9], tag: 3, span: [0, 0.5] },
 ];
 const mesh: Mesh = {
   nodes: Float64Array.from(places.flat()),
@@ -69,7 +74,8 @@ const stretchesOf = (kinds: readonly [Wall, string?][]) => {
       return [tag, { tag, loop: 'outline', from, to: s, physics, ...(wall !== undefined && { wall }) }];
     }),
   );
-  pieces.set(5, { tag: 5, loop: 'baffle', from: 0, to: 0.5, physics: reflecting });
+  pieces.set(5, { tag: 5, loop: 'baffle', from: 0, to: 0.25, physics: reflecting });
+  pieces.set(6, { tag: 6, loop: 'baffle', from: 0.25, to: 0.5, physics: reflecting });
   const domain = { outline, holes: [], innerWalls: [baffle], regions: [], tolerance: 1e-12 };
   return stretches(mesh, { domain, pieces }, { length: 'mm', time: 's' });
 };
@@ -99,6 +105,7 @@ it('joins neighbouring pieces of one kind and name to one stretch, in the order 
         [0.5, 0],
         [1, 0],
         [1, 1],
+        [0.5, 1],
         [0, 1],
         [0, 0],
       ],
@@ -122,7 +129,12 @@ it('keeps a loop of one kind in one stretch that begins and ends at the mark', (
   const { walls } = stretchesOf([plain, plain, plain, plain, plain]);
   const [whole, ...rest] = walls.filter(({ loop }) => loop === 'outline');
   expect(rest).toEqual([]);
-  expect([whole?.from, whole?.to, whole?.points.length]).toEqual([0, 4, 6]);
+  expect([whole?.from, whole?.to, whole?.points.length]).toEqual([0, 4, 7]);
+});
+
+it('parts stretches of different names, also where their kind is the same', () => {
+  const { walls } = stretchesOf([[absorbing, 'left'], [absorbing, 'right'], plain, plain, plain]);
+  expect(walls.slice(0, 2).map(({ name }) => name)).toEqual(['left', 'right']);
 });
 
 it('parts stretches of different reactivity and prints it with its unit', () => {
