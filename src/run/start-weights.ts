@@ -1,11 +1,10 @@
-import type { Mesh, MeshLocator, Point } from '../../mesher/index.ts';
+import type { Mesh, Locator, Point } from '../../mesher/index.ts';
 import { evenStart, pointStart, spotStart } from '../../solver/index.ts';
 import type { Case, Start } from '../case/case.ts';
 import { CaseError } from '../case/errors.ts';
 import { formatNumber, formatQuantity } from '../case/format-quantity.ts';
 import { joinKey } from '../case/key-path.ts';
 import type { LayoutDomain } from '../case/layout-domain.ts';
-import { nearestWall } from './nearest-wall.ts';
 
 /** A start that this version answers. */
 export type AnswerableStart = Exclude<Start, { readonly kind: 'notYet' }>;
@@ -37,7 +36,7 @@ export function startWeights(
   theCase: Case,
   domain: LayoutDomain,
   mesh: Mesh,
-  places: MeshLocator,
+  places: Locator,
   start: AnswerableStart,
   key: 'starts' | 'pins' = 'starts',
 ): Float64Array {
@@ -62,11 +61,11 @@ function placedPoint(
   theCase: Case,
   domain: LayoutDomain,
   mesh: Mesh,
-  places: MeshLocator,
+  places: Locator,
   at: Point,
   key: string,
 ): Float64Array {
-  const wall = nearestWall(mesh, at);
+  const wall = places.nearestWall(at[0], at[1]);
   const near = theCase.drawing.tolerance;
   const found = places.find(at[0], at[1]);
   const physics = domain.pieces.get(mesh.segmentTag[wall.segment] ?? -1)?.physics;
@@ -86,7 +85,7 @@ function placedPoint(
     'START_OUTSIDE',
     `${here} lies outside the compartment, ${length(wall.distance)} from its nearest wall`,
     { at: [at], key },
-    `Move it inside; the nearest wall is at (${formatNumber(wall.at[0])}, ${formatNumber(wall.at[1])})`,
+    'Move it inside',
   );
 }
 
