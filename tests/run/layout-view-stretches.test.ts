@@ -10,7 +10,7 @@ const reflecting: Wall = { kind: 'reflecting' };
 const absorbing: Wall = { kind: 'absorbing', exit: 0 };
 const weak: Wall = { kind: 'partlyAbsorbing', kappa: 0.002, exit: 1 };
 
-/** Unit square from (0, 0), its lower side in two halves, tags 0 to 4 in order; a wall across its middle, tags 5, 6. */
+/** Unit square from (0, 0), its lower side in two halves, tags 0 to 4 in order; a wall across its middle, tags 5 to 7. */
 const outline: Chain = {
   name: 'outline',
   pieces: [
@@ -23,7 +23,11 @@ const outline: Chain = {
 };
 const baffle: Chain = {
   name: 'baffle',
-  pieces: [line([0.25, 0.5], [0.5, 0.5], 5), line([0.5, 0.5], [0.75, 0.5], 6)],
+  pieces: [
+    line([0.25, 0.5], [0.5, 0.5], 5),
+    line([0.5, 0.5], [0.75, 0.5], 6),
+    line([0.75, 0.5], [0.875, 0.5], 7),
+  ],
 };
 const lengths = [0.5, 0.5, 1, 1, 1];
 
@@ -39,6 +43,8 @@ const places: Point[] = [
   [0.5, 0.5],
   [0.5, 0.5],
   [0.5, 1],
+  [0.875, 0.5],
+  [0.75, 0.5],
 ];
 const segments = [
   { ends: [4, 0], tag: 4, span: [0, 1] },
@@ -48,7 +54,9 @@ const segments = [
   { ends: [2, 3], tag: 2, span: [0, 1] },
   { ends: [8, 5], tag: 5, span: [1, 0] },
   { ends: [1, 2], tag: 1, span: [0, 1] },
-  { ends: [6, 8], tag: 6, span: [1, 0] },
+  { ends: [11, 8], tag: 6, span: [1, 0] },
+  { ends: [6, 10], tag: 7, span: [0, 1] },
+  { ends: [10, 11], tag: 7, span: [1, 0] },
   { ends: [9, 4], tag: 3, span: [0.5, 1] },
   { ends: [3, 9], tag: 3, span: [0, 0.5] },
 ];
@@ -65,7 +73,7 @@ const mesh: Mesh = {
 };
 
 /** The square with one kind and name per outline piece; the baffle has none. */
-const stretchesOf = (kinds: readonly [Wall, string?][]) => {
+const stretchesOf = (kinds: readonly [Wall, string?][], middle: Wall = reflecting) => {
   let s = 0;
   const pieces = new Map<number, WallPiece>(
     kinds.map(([physics, wall], tag) => {
@@ -75,7 +83,8 @@ const stretchesOf = (kinds: readonly [Wall, string?][]) => {
     }),
   );
   pieces.set(5, { tag: 5, loop: 'baffle', from: 0, to: 0.25, physics: reflecting });
-  pieces.set(6, { tag: 6, loop: 'baffle', from: 0.25, to: 0.5, physics: reflecting });
+  pieces.set(6, { tag: 6, loop: 'baffle', from: 0.25, to: 0.5, physics: middle });
+  pieces.set(7, { tag: 7, loop: 'baffle', from: 0.5, to: 0.625, physics: reflecting });
   const domain = { outline, holes: [], innerWalls: [baffle], regions: [], tolerance: 1e-12 };
   return stretches(mesh, { domain, pieces }, { length: 'mm', time: 's' });
 };
@@ -145,25 +154,22 @@ it('parts stretches of different reactivity and prints it with its unit', () => 
 it('gives both sides of an inner wall, each with the compartment on its left', () => {
   const { walls, segmentsOf } = stretchesOf([plain, plain, plain, plain, plain]);
   const sides = walls.filter(({ loop }) => loop === 'baffle');
-  expect(sides.map(({ from, to, points }) => ({ from, to, points }))).toEqual([
-    {
-      from: 0,
-      to: 0.5,
-      points: [
-        [0.25, 0.5],
-        [0.5, 0.5],
-        [0.75, 0.5],
-      ],
-    },
-    {
-      from: 0.5,
-      to: 0,
-      points: [
-        [0.75, 0.5],
-        [0.5, 0.5],
-        [0.25, 0.5],
-      ],
-    },
+  expect(sides.map(({ from, to, points }) => [from, to, points.map(([x]) => x)])).toEqual([
+    [0, 0.625, [0.25, 0.5, 0.75, 0.875]],
+    [0.625, 0, [0.875, 0.75, 0.5, 0.25]],
   ]);
   expect(segmentsOf.map((list) => list.length)).toEqual(walls.map(({ points }) => points.length - 1));
+});
+
+it('does not join the two ends of an inner wall, which are no neighbours', () => {
+  const { walls } = stretchesOf([plain, plain, plain, plain, plain], { kind: 'permeable', permeability: 3 });
+  const sides = walls.filter(({ loop }) => loop === 'baffle');
+  expect(sides.map(({ from, to, permeability }) => [from, to, permeability])).toEqual([
+    [0, 0.25, undefined],
+    [0.25, 0.5, '3 mm/s'],
+    [0.5, 0.625, undefined],
+    [0.625, 0.5, undefined],
+    [0.5, 0.25, '3 mm/s'],
+    [0.25, 0, undefined],
+  ]);
 });
