@@ -60,4 +60,6 @@ export interface Healing {
   readonly what: string;
   readonly loop: string;
   readonly at: Point;
+  /** For a loop that was left out as a repeat: the name of the one that stands for both. */
+  readonly keptAs?: string;
 }

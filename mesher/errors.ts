@@ -7,6 +7,8 @@ export type MesherCode =
   | 'ZERO_WIDTH_SPIKE'
   | 'NO_AREA'
   | 'NOT_FINITE'
+  | 'LOOP_OPEN'
+  | 'HOLE_IN_HOLE'
   | 'HOLE_OUTSIDE'
   | 'INNER_WALL_OUTSIDE'
   | 'CORNER_TOO_SHARP'
