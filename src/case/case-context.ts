@@ -4,6 +4,7 @@ import type { CaseUnits, Stated } from './case.ts';
 import { type Dimension, exampleOf } from './dimensions.ts';
 import type { DrawingContext } from './drawing-context.ts';
 import { type CaseCode, CaseError } from './errors.ts';
+import { numberOf, ratioOfDecimal, times } from './exact-ratio.ts';
 import { joinKey } from './key-path.ts';
 import { notYet } from './not-available.ts';
 import { parseQuantity, type Refuse } from './units.ts';
@@ -173,7 +174,7 @@ export function readWithin(
       );
     }
     const part = convert(text, 'fraction', key);
-    ends = [value * (1 - part), value * (1 + part)];
+    ends = [scaled(value, -part), scaled(value, part)];
   }
   if (ends[0] > ends[1]) ends.reverse();
   if (!(ends[0] <= value && value <= ends[1])) {
@@ -185,6 +186,13 @@ export function readWithin(
     );
   }
   return ends;
+}
+
+/** value·(1 + part), rounded once: 50 % more than 1e-4 is 1.5e-4 as it would be typed. */
+function scaled(value: number, part: number): number {
+  const [a, b] = [ratioOfDecimal(String(value)), ratioOfDecimal(String(part))];
+  if (a === undefined || b === undefined) return value * (1 + part);
+  return numberOf(times(a, { over: b.under + b.over, under: b.under }));
 }
 
 const maxFileBytes = 5_000_000;
