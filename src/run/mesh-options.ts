@@ -13,7 +13,7 @@ import type { LayoutDomain } from '../case/layout-domain.ts';
 /** How fine the first mesh of a layout is. Lengths are relative to what an even mesh of `evenNodes` would have. */
 export const firstMesh = {
   /** Nodes an even mesh of the compartment would have; grading adds to them. */
-  evenNodes: 9000,
+  evenNodes: 6000,
   /** Size where the kind of wall changes, ÷ the even size: values there converge like the size itself (METHODS 4). */
   atJunction: 1 / 256,
   /** Size along curved wall ÷ its radius of curvature. */
