@@ -66,7 +66,7 @@ export function buildDrawing(raw: RawDrawing, ctx: DrawingContext): Drawing {
     regions: chains('region'),
     tolerance,
   };
-  const { domain, healed } = healedOrRefused(drawn, parts, down, ctx);
+  const { domain, healed } = healedOrRefused(drawn, parts, down, file?.warnings ?? [], ctx);
   const sameAs = new Map(
     healed.flatMap(({ loop, keptAs }) => (keptAs === undefined ? [] : [[loop, keptAs] as const])),
   );
@@ -195,6 +195,7 @@ function healedOrRefused(
   drawn: Domain,
   parts: readonly Part[],
   down: boolean,
+  warnings: readonly string[],
   ctx: DrawingContext,
 ): { domain: Domain; healed: readonly Healing[] } {
   try {
@@ -203,7 +204,9 @@ function healedOrRefused(
     if (!(error instanceof MesherError)) throw error;
     const { at, loops } = error.where;
     const key = parts.find((part) => part.name === loops?.at(-1))?.key ?? 'drawing';
-    const asWritten = at?.map(([x, y]): Point => [x, down ? -y : y]);
-    return ctx.fail(error.code, error.what, key, error.remedy, asWritten);
+    const asWritten = at?.map(([x, y]): Point => [x, down ? 0 - y : y]);
+    // A proposal that was wrong is the likeliest reason, and the person has not seen it yet.
+    const remedy = [error.remedy, ...warnings.map((text) => `Note: ${text}.`)].join(' ');
+    return ctx.fail(error.code, error.what, key, remedy, asWritten);
   }
 }

@@ -64,7 +64,7 @@ export function readShape(
   const place: Placing = {
     point: (value, at) => {
       const [px, py] = readPoint(value, at, ctx);
-      return [px, y === 'down' ? -py : py];
+      return [px, y === 'down' ? 0 - py : py];
     },
     down: y === 'down',
   };

@@ -7,7 +7,7 @@ interface Line {
 }
 
 /** Places looked at on each curve before the gap is narrowed down. */
-const samples = 24;
+const samples = 12;
 /** Above this many pairs of place and curve the gap is not looked for: it is only a remark. */
 const mostPairs = 200_000;
 

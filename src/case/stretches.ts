@@ -329,7 +329,7 @@ class Resolving {
   }
 
   private upright([x, y]: Point): Point {
-    return [x, this.drawing.writtenDown ? -y : y];
+    return [x, this.drawing.writtenDown ? 0 - y : y];
   }
 
   private fail(what: string, remedy: string, under?: string): never {
