@@ -1,4 +1,5 @@
-import { create, type MathNode, parseDependencies } from 'mathjs';
+import type { MathNode } from 'mathjs';
+import math from 'mathjs/lib/browser/math.js';
 import type { CaseCode } from './errors.ts';
 
 /**
@@ -15,8 +16,6 @@ export interface Expression {
   /** Whether x or y occurs. */
   readonly varies: boolean;
 }
-
-const { parse } = create({ ...parseDependencies });
 
 const maxCharacters = 500;
 
@@ -196,7 +195,7 @@ function parseText(text: string, key: string, fail: FailAtKey): MathNode {
     );
   }
   try {
-    return parse(plainSigns(text));
+    return math.parse(plainSigns(text));
   } catch (cause) {
     const at = /\(char (\d+)\)/.exec(cause instanceof Error ? cause.message : '')?.[1];
     return refuse(

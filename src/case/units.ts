@@ -1,4 +1,4 @@
-import { create, type MathJsInstance, unitDependencies } from 'mathjs';
+import math from 'mathjs/lib/browser/math.js';
 import type { CaseUnits } from './case.ts';
 import { type Dimension, exampleOf, nameOf, powersOf, unitText } from './dimensions.ts';
 import type { CaseCode } from './errors.ts';
@@ -12,8 +12,6 @@ interface UnitMeaning {
   readonly ratio: Ratio;
   readonly powers: readonly [length: number, time: number];
 }
-
-const math: MathJsInstance = create({ ...unitDependencies }) as MathJsInstance;
 
 /** Spellings that people use and mathjs does not know. */
 const spellings: Readonly<Record<string, string>> = {
