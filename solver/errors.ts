@@ -3,11 +3,18 @@ import type { Point } from '../mesher/index.ts';
 /** Every code a {@link SolverError} can carry. README.md lists each with its remedy; a test compares the lists. */
 export type SolverCode =
   | 'DIFFUSION_NOT_POSITIVE'
+  | 'DEPTH_NOT_POSITIVE'
+  | 'DRIFT_NOT_FINITE'
+  | 'LOSS_NEGATIVE'
+  | 'FLOOR_WITHOUT_DEPTH'
+  | 'TENSOR_CONVENTION'
   | 'WALL_COEFFICIENT_NOT_POSITIVE'
   | 'WALL_NOT_DESCRIBED'
+  | 'WALL_NOT_INNER'
   | 'NO_WAY_OUT'
   | 'START_OUTSIDE'
   | 'START_ON_ABSORBING_WALL'
+  | 'MEMORY_LIMIT'
   | 'NOT_CONVERGED'
   | 'SOLVING_STOPPED';
 

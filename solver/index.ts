@@ -1,13 +1,23 @@
 export { type ExitDensity, exitDensity } from './answers/exit-density.ts';
-export { exitShares } from './answers/exit-shares.ts';
+export { exitShares, lostShare } from './answers/exit-shares.ts';
 export { valueFromStart } from './answers/fields.ts';
 export { meanExitTime } from './answers/mean-exit-time.ts';
 export { roundingFloor } from './answers/rounding-floor.ts';
 export { evenStart, pointStart, spotStart } from './answers/starts.ts';
 export { type SolverCode, SolverError, type SolverWhere } from './errors.ts';
-export { type IterationOptions, iterationDefaults, type Solution } from './linear/conjugate-gradients.ts';
 export type { Csr } from './linear/csr.ts';
-export { type Prepared, prepare, solveOrThrow } from './linear/prepare.ts';
+export { type IterationOptions, iterationDefaults, type Solution } from './linear/iteration.ts';
+export { type FactorOptions, factorDefaults } from './linear/multifrontal.ts';
+export { type Prepared, prepare, solveAdjointOrThrow, solveOrThrow } from './linear/prepare.ts';
 export { assemble } from './operator/assemble.ts';
+export type { Cycle } from './operator/reversibility.ts';
 export type { Sinks, System } from './operator/system.ts';
-export type { Coefficient, Medium, NoiseConvention, Problem, Wall } from './problem/problem.ts';
+export type {
+  Coefficient,
+  Drift,
+  Medium,
+  NoiseConvention,
+  Problem,
+  Tensor,
+  Wall,
+} from './problem/problem.ts';

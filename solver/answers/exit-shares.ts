@@ -15,14 +15,27 @@ import { overAllNodes } from './fields.ts';
  */
 export function exitShares(system: System, hooks: Hooks = {}): Float64Array[] {
   const fields: Float64Array[] = [];
-  const { row, exit, rate } = system.sinks;
-  for (let e = 0; e < system.exitCount; e++) {
-    const rhs = new Float64Array(system.size);
-    for (let s = 0; s < row.length; s++) if (exit[s] === e) rhs[row[s]] += rate[s];
-    const field = overAllNodes(system, solveOrThrow(system, rhs, hooks));
-    const wall = system.absorbing;
-    for (let q = 0; q < wall.node.length; q++) if (wall.exit[q] === e) field[wall.node[q]] += wall.part[q];
-    fields.push(field);
-  }
+  for (let e = 0; e < system.exitCount; e++) fields.push(shareOf(system, e, hooks));
   return fields;
+}
+
+/**
+ * The chance to be lost on the way (loss c) before leaving; with the shares it sums to 1 at every node.
+ *
+ * @returns one entry per mesh node
+ * @throws {SolverError} NOT_CONVERGED, SOLVING_STOPPED
+ */
+export function lostShare(system: System, hooks: Hooks = {}): Float64Array {
+  return shareOf(system, -1, hooks);
+}
+
+function shareOf(system: System, through: number, hooks: Hooks): Float64Array {
+  const { row, exit, rate } = system.sinks;
+  const rhs = new Float64Array(system.size);
+  for (let s = 0; s < row.length; s++) if (exit[s] === through) rhs[row[s]] += rate[s];
+  const field = overAllNodes(system, solveOrThrow(system, rhs, hooks));
+  const wall = system.absorbing;
+  for (let q = 0; q < wall.node.length; q++)
+    if (wall.exit[q] === through) field[wall.node[q]] += wall.part[q];
+  return field;
 }

@@ -1,6 +1,6 @@
 import type { Mesh } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
-import { triangleArea } from '../operator/lumped-mass.ts';
+import { triangleArea } from '../operator/lumped-integral.ts';
 import { momentsInDisc } from './disc-overlap.ts';
 
 /**

@@ -1,25 +1,7 @@
 import type { Hooks } from '../../mesher/index.ts';
+import { dot, type IterationOptions, iterationDefaults, type Solution } from './iteration.ts';
 import { applyOperator, backwardError, type LinearOperator } from './residual.ts';
 import { stopIfAsked } from './stopping.ts';
-
-/** Outcome of a solve: a field, or the statement that there is none. */
-export type Solution =
-  | {
-      readonly converged: true;
-      readonly x: Float64Array;
-      readonly residual: number;
-      readonly iterations: number;
-    }
-  | { readonly converged: false; readonly residual: number; readonly iterations: number };
-
-/** When an iteration ends. */
-export interface IterationOptions {
-  /** Backward error ‖r‖/(‖A‖‖x‖+‖b‖) wanted. */
-  readonly tolerance?: number;
-  readonly maxIterations?: number;
-}
-
-export const iterationDefaults = { tolerance: 1e-13, maxIterations: 500 } as const;
 
 /**
  * Conjugate gradients from x₀ = P⁻¹b. The true residual is computed before answering; a factor as preconditioner
@@ -76,10 +58,4 @@ export function conjugateGradients(
   return residual <= tolerance
     ? { converged: true, x, residual, iterations }
     : { converged: false, residual, iterations };
-}
-
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += a[i] * b[i];
-  return sum;
 }

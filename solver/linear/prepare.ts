@@ -1,10 +1,13 @@
 import type { Hooks } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 import type { System } from '../operator/system.ts';
-import { conjugateGradients, type IterationOptions, type Solution } from './conjugate-gradients.ts';
+import { conjugateGradients } from './conjugate-gradients.ts';
 import { dissect } from './dissection.ts';
+import { solveWithFactor } from './factor-solve.ts';
 import { planFronts } from './fronts.ts';
-import { factorSymmetric, solveSymmetric } from './multifrontal.ts';
+import { gmres } from './gmres.ts';
+import type { IterationOptions, Solution } from './iteration.ts';
+import { type FactorOptions, factorize } from './multifrontal.ts';
 import { stopIfAsked } from './stopping.ts';
 
 /** A system with its factor, ready for any number of right-hand sides. */
@@ -12,6 +15,10 @@ export interface Prepared {
   readonly system: System;
   /** A x = rhs, one entry per free node; a statement of failure instead of a half-true field. */
   readonly solve: (rhs: Float64Array, options?: IterationOptions & Hooks) => Solution;
+  /** Aᵀ x = rhs. */
+  readonly solveAdjoint: (rhs: Float64Array, options?: IterationOptions & Hooks) => Solution;
+  /** x ← A⁻¹ x by the factor alone, in place: `width` right-hand sides, side r of row i at x[i·width + r]. */
+  readonly precondition: (x: Float64Array, width?: number) => void;
   /** Bytes held by the factor. */
   readonly bytes: number;
 }
@@ -21,41 +28,57 @@ const prepared = new WeakMap<System, Prepared>();
 /**
  * Orders and factors a system once; later calls with the same system get the same factor.
  *
- * @throws {SolverError} SOLVING_STOPPED
+ * @throws {SolverError} MEMORY_LIMIT, SOLVING_STOPPED
  */
-export function prepare(system: System, hooks: Hooks = {}): Prepared {
+export function prepare(system: System, options: FactorOptions & Hooks = {}): Prepared {
   const known = prepared.get(system);
   if (known) return known;
-  const made = prepareAnew(system, hooks);
+  const made = prepareAnew(system, options);
   prepared.set(system, made);
   return made;
 }
 
-function prepareAnew(system: System, hooks: Hooks): Prepared {
+function prepareAnew(system: System, options: FactorOptions & Hooks): Prepared {
   const { nodes } = system.mesh;
   const xy = new Float64Array(2 * system.size);
   for (let i = 0; i < system.size; i++) {
     xy[2 * i] = nodes[2 * system.nodeOf[i]];
     xy[2 * i + 1] = nodes[2 * system.nodeOf[i] + 1];
   }
-  const fronts = planFronts(system.rates, dissect(system.rates, xy));
-  stopIfAsked(hooks);
-  const factor = factorSymmetric(fronts, system.rates, system.slack, hooks);
-  const precondition = (y: Float64Array): void => solveSymmetric(factor, y);
+  const dissection = dissect(system.rates, xy);
+  stopIfAsked(options);
+  const fronts = planFronts(system.rates, dissection);
+  stopIfAsked(options);
+  const factor = factorize(fronts, system, options);
+  const iterate = system.symmetric ? conjugateGradients : gmres;
+  const solve =
+    (transposed: boolean) =>
+    (rhs: Float64Array, watched: IterationOptions & Hooks = {}) =>
+      iterate({ ...system, transposed }, rhs, (y) => solveWithFactor(factor, y, 1, transposed), watched);
   return {
     system,
-    solve: (rhs, options = hooks) => conjugateGradients(system, rhs, precondition, options),
-    bytes: factor.lower.byteLength + factor.inversePivot.byteLength,
+    solve: solve(false),
+    solveAdjoint: solve(!system.symmetric),
+    precondition: (x, width = 1) => solveWithFactor(factor, x, width, false),
+    bytes: factor.upper.byteLength * (system.symmetric ? 1 : 2) + factor.inversePivot.byteLength,
   };
 }
 
 /**
  * The solution of A x = rhs.
  *
- * @throws {SolverError} NOT_CONVERGED with the residual reached, SOLVING_STOPPED
+ * @throws {SolverError} NOT_CONVERGED with the residual reached, MEMORY_LIMIT, SOLVING_STOPPED
  */
 export function solveOrThrow(system: System, rhs: Float64Array, hooks: Hooks = {}): Float64Array {
-  const solution = prepare(system, hooks).solve(rhs, hooks);
+  return fieldOf(prepare(system, hooks).solve(rhs, hooks));
+}
+
+/** The solution of Aᵀ x = rhs; throws what {@link solveOrThrow} throws. */
+export function solveAdjointOrThrow(system: System, rhs: Float64Array, hooks: Hooks = {}): Float64Array {
+  return fieldOf(prepare(system, hooks).solveAdjoint(rhs, hooks));
+}
+
+function fieldOf(solution: Solution): Float64Array {
   if (solution.converged) return solution.x;
   throw new SolverError(
     'NOT_CONVERGED',

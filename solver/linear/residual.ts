@@ -6,12 +6,22 @@ export interface LinearOperator {
   readonly slack: Float64Array;
   /** Row sums of the rates plus slack. */
   readonly diagonal: Float64Array;
+  /** The transpose is meant. */
+  readonly transposed?: boolean;
 }
 
-/** y ← A x, by differences (less rounding than with a stored diagonal). */
+/** y ← A x by differences (less rounding than with a stored diagonal), or Aᵀ x. */
 export function applyOperator(a: LinearOperator, x: Float64Array, y: Float64Array): void {
   const { start, column, value, size } = a.rates;
-  const slack = a.slack;
+  const { slack, diagonal } = a;
+  if (a.transposed) {
+    for (let i = 0; i < size; i++) y[i] = diagonal[i] * x[i];
+    for (let i = 0; i < size; i++) {
+      const xi = x[i];
+      for (let p = start[i]; p < start[i + 1]; p++) y[column[p]] -= value[p] * xi;
+    }
+    return;
+  }
   for (let i = 0; i < size; i++) {
     const xi = x[i];
     let sum = slack[i] * xi;

@@ -1,55 +1,97 @@
 import type { Hooks, Mesh } from '../../mesher/index.ts';
 import { csrOfPairs } from '../linear/csr.ts';
 import { stopIfAsked } from '../linear/stopping.ts';
+import { type MediumTerms, mediumTerms } from '../problem/medium-terms.ts';
 import type { Problem } from '../problem/problem.ts';
+import { requireTensorConvention } from '../problem/tensor-terms.ts';
+import { orderAlongCurve } from './curve-order.ts';
+import { sideDrift } from './drift.ts';
 import { edgeWeightsOf } from './edge-weights.ts';
 import { type EdgeList, listEdges } from './edges.ts';
-import { lumpedMass } from './lumped-mass.ts';
+import { type Links, plainLinks, symmetricLinks } from './links.ts';
+import { lumpedIntegral } from './lumped-integral.ts';
+import { type Bridges, permeableBridges } from './permeable-bridges.ts';
+import { type Reversibility, testReversibility } from './reversibility.ts';
 import { segmentTriangles } from './segment-triangles.ts';
-import type { Sinks, System } from './system.ts';
+import { collectSinks, type VolumeRate } from './sinks.ts';
+import type { System } from './system.ts';
 import { type AbsorbingNodes, absorbingNodes, partlyAbsorbingRates, type WallRates } from './wall-terms.ts';
 import { requireWayOut } from './way-out.ts';
 
+/** e^ψ is formed only while it stays far from the smallest number. */
+const largestPsiRange = 600;
+
 /**
- * Puts the physics on a mesh: the edge-averaged P1 operator with lumped mass and lumped wall terms, absorbing walls
- * eliminated (METHODS 2 and 4).
+ * Puts the physics on a mesh: the edge-averaged P1 operator with lumped mass, wall terms and losses, absorbing walls
+ * eliminated (METHODS 2 and 4). Reversibility is tested; a reversible process gets symmetric rates.
  *
- * @throws {SolverError} DIFFUSION_NOT_POSITIVE, WALL_COEFFICIENT_NOT_POSITIVE, WALL_NOT_DESCRIBED, NO_WAY_OUT,
- *   SOLVING_STOPPED
+ * @throws {SolverError} DIFFUSION_NOT_POSITIVE, DEPTH_NOT_POSITIVE, DRIFT_NOT_FINITE, LOSS_NEGATIVE,
+ *   FLOOR_WITHOUT_DEPTH, TENSOR_CONVENTION, WALL_COEFFICIENT_NOT_POSITIVE, WALL_NOT_DESCRIBED, WALL_NOT_INNER,
+ *   NO_WAY_OUT, SOLVING_STOPPED
  */
-export function assemble(mesh: Mesh, problem: Problem, hooks: Hooks = {}): System {
-  const nodeCount = mesh.nodes.length / 2;
-  const edges = listEdges(mesh.triangles, nodeCount);
+export function assemble(given: Mesh, problem: Problem, hooks: Hooks = {}): System {
+  requireTensorConvention(problem, given);
+  const { mesh, nodeOf: nodeBefore } = orderAlongCurve(given);
   stopIfAsked(hooks);
-  const weight = edgeWeightsOf(mesh, problem, edges);
+  const terms = mediumTerms(problem, sizeOf(mesh.nodes));
+  const edges = listEdges(mesh.triangles, nodeBefore.length);
   stopIfAsked(hooks);
-  const mass = lumpedMass(mesh, problem);
+  const triangleOf = segmentTriangles(mesh, edges);
+  const weights = edgeWeightsOf(mesh, terms, edges);
+  stopIfAsked(hooks);
+  const bridges = permeableBridges(mesh, problem, terms, triangleOf);
   const absorbing = absorbingNodes(mesh, problem);
-  const partly = partlyAbsorbingRates(mesh, problem, segmentTriangles(mesh, edges));
-  checkWayOut(mesh, edges, absorbing, partly);
+  const partly = partlyAbsorbingRates(mesh, problem, terms, triangleOf);
+  const mass = lumpedIntegral(mesh, (region) => terms[region].mass);
+  const volume = volumeRates(mesh, terms);
+  checkWayOut(mesh, edges, bridges, absorbing, partly, volume);
   stopIfAsked(hooks);
 
-  const { nodeOf, freeOf } = numberFreeNodes(nodeCount, absorbing);
-  const size = nodeOf.length;
-  const a = edges.first.map((node) => freeOf[node]);
-  const b = edges.second.map((node) => freeOf[node]);
-  const rates = csrOfPairs(size, a, b, weight, weight);
-  const sinks = collectSinks(edges, weight, freeOf, absorbing, partly);
+  const drift = sideDrift(mesh, terms, edges);
+  const tested = drift ? testReversibility(mesh, edges, drift, bridges.pairs) : undefined;
+  const plain = drift && (!tested?.reversible || tested.range > largestPsiRange);
+  const psi = tested?.reversible ? tested.psi : undefined;
+  const links = plain
+    ? plainLinks(edges, weights, bridges, drift)
+    : symmetricLinks(edges, weights, bridges, psi);
+  const rowScale = psi && !plain ? psi.map(Math.exp) : undefined;
+  stopIfAsked(hooks);
+  const free = numberFreeNodes(nodeBefore.length, absorbing);
+  const sinks = collectSinks({ links, absorbing, partly, volume, rowScale }, free.freeOf);
+  const load = Float64Array.from(free.nodeOf, (node) => mass[node] * (rowScale ? rowScale[node] : 1));
+  const matrix = matrixOf(links, free, sinks);
+  return {
+    ...{ mesh: given, exitCount: problem.exitCount, ...matrix, load, symmetric: !plain },
+    ...numberedAsGiven(given, nodeBefore, free.nodeOf),
+    sinks: { ...sinks, node: sinks.node.map((node) => nodeBefore[node]) },
+    absorbing: partsOfExits(absorbing, nodeBefore),
+    negativeRates: negativeRates(links, mesh),
+    ...driftFindings(tested, nodeBefore),
+    ...(bridges.unequalAt ? { unequalPermeableAt: bridges.unequalAt } : {}),
+  };
+}
+
+/** Rates, slack and diagonal of the free rows. */
+function matrixOf(links: Links, free: FreeNodes, sinks: System['sinks']) {
+  const { freeOf } = free;
+  const size = free.nodeOf.length;
+  const row = (node: number): number => freeOf[node];
+  const rates = csrOfPairs(size, links.first.map(row), links.second.map(row), links.forth, links.back);
   const slack = new Float64Array(size);
   for (let s = 0; s < sinks.row.length; s++) slack[sinks.row[s]] += sinks.rate[s];
   const diagonal = slack.slice();
   for (let i = 0; i < size; i++) {
     for (let p = rates.start[i]; p < rates.start[i + 1]; p++) diagonal[i] += rates.value[p];
   }
-  const load = new Float64Array(size);
-  for (let i = 0; i < size; i++) load[i] = mass[nodeOf[i]];
-  return {
-    ...{ mesh, exitCount: problem.exitCount, size, nodeOf, freeOf, rates, slack, diagonal, load, sinks },
-    absorbing: partsOfExits(absorbing),
-  };
+  return { size, rates, slack, diagonal };
 }
 
-function numberFreeNodes(nodeCount: number, absorbing: AbsorbingNodes) {
+interface FreeNodes {
+  readonly nodeOf: Int32Array;
+  readonly freeOf: Int32Array;
+}
+
+function numberFreeNodes(nodeCount: number, absorbing: AbsorbingNodes): FreeNodes {
   const freeOf = new Int32Array(nodeCount);
   const nodeOf = new Int32Array(nodeCount - absorbing.size);
   let size = 0;
@@ -60,64 +102,101 @@ function numberFreeNodes(nodeCount: number, absorbing: AbsorbingNodes) {
   return { nodeOf, freeOf };
 }
 
-function checkWayOut(mesh: Mesh, edges: EdgeList, absorbing: AbsorbingNodes, partly: WallRates): void {
+/** The numbering of rows against the mesh the caller knows. */
+function numberedAsGiven(given: Mesh, nodeBefore: Int32Array, nodeOfRow: Int32Array): FreeNodes {
+  const freeOf = new Int32Array(given.nodes.length / 2).fill(-1);
+  const nodeOf = nodeOfRow.map((node) => nodeBefore[node]);
+  for (let i = 0; i < nodeOf.length; i++) freeOf[nodeOf[i]] = i;
+  return { nodeOf, freeOf };
+}
+
+function volumeRates(mesh: Mesh, terms: readonly MediumTerms[]): VolumeRate[] {
+  const volume: VolumeRate[] = [];
+  if (terms.some((medium) => medium.loss)) {
+    volume.push({ exit: -1, rate: lumpedIntegral(mesh, (region) => terms[region].loss) });
+  }
+  for (const exit of new Set(terms.flatMap((medium) => (medium.floor ? [medium.floor.exit] : [])))) {
+    const rateOf = (region: number) => {
+      const floor = terms[region].floor;
+      return floor?.exit === exit ? floor.rate : undefined;
+    };
+    volume.push({ exit, rate: lumpedIntegral(mesh, rateOf) });
+  }
+  return volume;
+}
+
+function checkWayOut(
+  mesh: Mesh,
+  edges: EdgeList,
+  bridges: Bridges,
+  absorbing: AbsorbingNodes,
+  partly: WallRates,
+  volume: readonly VolumeRate[],
+): void {
   const leads = new Uint8Array(mesh.nodes.length / 2);
   for (const node of absorbing.keys()) leads[node] = 1;
   for (const node of partly.node) leads[node] = 1;
+  for (const { rate } of volume) for (let i = 0; i < rate.length; i++) if (rate[i] > 0) leads[i] = 1;
   const pairs = new Int32Array(2 * edges.count);
   for (let e = 0; e < edges.count; e++) {
     pairs[2 * e] = edges.first[e];
     pairs[2 * e + 1] = edges.second[e];
   }
-  requireWayOut(mesh, [pairs], leads);
+  requireWayOut(mesh, [pairs, bridges.pairs], leads);
 }
 
-/** A row's ways out: to each absorbing neighbour (in parts where two exits touch), and through its own partly absorbing wall. */
-function collectSinks(
-  edges: EdgeList,
-  weight: Float64Array,
-  freeOf: Int32Array,
-  absorbing: AbsorbingNodes,
-  partly: WallRates,
-): Sinks {
-  const row: number[] = [];
-  const node: number[] = [];
-  const exit: number[] = [];
-  const rate: number[] = [];
-  const add = (from: number, at: number, to: number, r: number): void => {
-    row.push(from);
-    node.push(at);
-    exit.push(to);
-    rate.push(r);
-  };
-  for (let e = 0; e < edges.count; e++) {
-    const a = edges.first[e];
-    const b = edges.second[e];
-    if (freeOf[a] >= 0 === freeOf[b] >= 0) continue;
-    const wallNode = freeOf[a] < 0 ? a : b;
-    const exits = absorbing.get(wallNode) ?? [];
-    for (const to of exits) add(freeOf[a + b - wallNode], wallNode, to, weight[e] / exits.length);
-  }
-  for (let p = 0; p < partly.node.length; p++) {
-    const at = partly.node[p];
-    if (freeOf[at] >= 0) add(freeOf[at], at, partly.exit[p], partly.rate[p]);
-  }
-  return {
-    ...{ row: Int32Array.from(row), node: Int32Array.from(node), exit: Int32Array.from(exit) },
-    rate: Float64Array.from(rate),
-  };
-}
-
-function partsOfExits(absorbing: AbsorbingNodes): System['absorbing'] {
+function partsOfExits(absorbing: AbsorbingNodes, nodeBefore: Int32Array): System['absorbing'] {
   const node: number[] = [];
   const exit: number[] = [];
   const part: number[] = [];
   for (const [at, exits] of absorbing) {
     for (const to of exits) {
-      node.push(at);
+      node.push(nodeBefore[at]);
       exit.push(to);
       part.push(1 / exits.length);
     }
   }
   return { node: Int32Array.from(node), exit: Int32Array.from(exit), part: Float64Array.from(part) };
+}
+
+function negativeRates(links: Links, mesh: Mesh): System['negativeRates'] {
+  const { first, second, forth, back } = links;
+  let count = 0;
+  let worst = -1;
+  for (let l = 0; l < first.length; l++) {
+    if (forth[l] >= 0 && back[l] >= 0) continue;
+    count++;
+    if (worst < 0 || forth[l] < forth[worst]) worst = l;
+  }
+  if (worst < 0) return { count: 0 };
+  const a = 2 * first[worst];
+  const b = 2 * second[worst];
+  const at = [(mesh.nodes[a] + mesh.nodes[b]) / 2, (mesh.nodes[a + 1] + mesh.nodes[b + 1]) / 2] as const;
+  return { count, at };
+}
+
+function driftFindings(
+  tested: Reversibility | undefined,
+  nodeBefore: Int32Array,
+): Pick<System, 'psi' | 'cycle'> {
+  if (!tested) return {};
+  if (!tested.reversible) return { cycle: tested.cycle };
+  const psi = new Float64Array(tested.psi.length);
+  for (let i = 0; i < psi.length; i++) psi[nodeBefore[i]] = tested.psi[i];
+  return { psi };
+}
+
+/** Longer side of the nodes' bounding box. */
+function sizeOf(nodes: Float64Array): number {
+  let lowX = Number.POSITIVE_INFINITY;
+  let lowY = Number.POSITIVE_INFINITY;
+  let highX = Number.NEGATIVE_INFINITY;
+  let highY = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < nodes.length; i += 2) {
+    lowX = Math.min(lowX, nodes[i]);
+    highX = Math.max(highX, nodes[i]);
+    lowY = Math.min(lowY, nodes[i + 1]);
+    highY = Math.max(highY, nodes[i + 1]);
+  }
+  return Math.max(highX - lowX, highY - lowY);
 }

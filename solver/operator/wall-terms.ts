@@ -1,6 +1,6 @@
 import type { Mesh } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
-import { diffusionAt, noiseAlpha, powerAlphaLessOne } from '../problem/medium-values.ts';
+import { type MediumTerms, valueAt } from '../problem/medium-terms.ts';
 import type { Coefficient, Problem, Wall } from '../problem/problem.ts';
 import { edgePoints, edgeWeights } from './quadrature.ts';
 
@@ -40,9 +40,13 @@ export function absorbingNodes(mesh: Mesh, problem: Problem): AbsorbingNodes {
  *
  * @throws {SolverError} WALL_COEFFICIENT_NOT_POSITIVE, DIFFUSION_NOT_POSITIVE, WALL_NOT_DESCRIBED
  */
-export function partlyAbsorbingRates(mesh: Mesh, problem: Problem, regionOfSegment: Int32Array): WallRates {
+export function partlyAbsorbingRates(
+  mesh: Mesh,
+  problem: Problem,
+  terms: readonly MediumTerms[],
+  triangleOf: Int32Array,
+): WallRates {
   const { nodes, segments } = mesh;
-  const alpha = noiseAlpha[problem.noise];
   const rates = { node: [] as number[], exit: [] as number[], rate: [] as number[] };
   const ends = new Float64Array(2);
   for (let s = 0; s < mesh.segmentTag.length; s++) {
@@ -52,8 +56,7 @@ export function partlyAbsorbingRates(mesh: Mesh, problem: Problem, regionOfSegme
     const q = segments[2 * s + 1];
     if (!(wall.kappa > 0 && wall.kappa < Number.POSITIVE_INFINITY))
       throw kappaNotPositive(mesh, s, wall.kappa);
-    const diffusion = problem.media[mesh.regionSet[regionOfSegment[s]]].diffusion;
-    integrateMass(ends, nodes, 2 * p, 2 * q, diffusion, alpha);
+    integrateMass(ends, nodes, 2 * p, 2 * q, terms[mesh.regionSet[triangleOf[s]]].mass);
     rates.node.push(p, q);
     rates.exit.push(wall.exit, wall.exit);
     rates.rate.push(wall.kappa * ends[0], wall.kappa * ends[1]);
@@ -67,8 +70,7 @@ function integrateMass(
   nodes: Float64Array,
   p: number,
   q: number,
-  diffusion: Coefficient,
-  alpha: number,
+  mass: Coefficient,
 ): void {
   const dx = nodes[q] - nodes[p];
   const dy = nodes[q + 1] - nodes[p + 1];
@@ -77,8 +79,7 @@ function integrateMass(
   ends[1] = 0;
   for (let g = 0; g < edgePoints.length; g++) {
     const s = edgePoints[g];
-    const d = diffusionAt(diffusion, nodes[p] + s * dx, nodes[p + 1] + s * dy);
-    const share = length * edgeWeights[g] * powerAlphaLessOne(d, alpha);
+    const share = length * edgeWeights[g] * valueAt(mass, nodes[p] + s * dx, nodes[p + 1] + s * dy);
     ends[0] += share * (1 - s);
     ends[1] += share * s;
   }

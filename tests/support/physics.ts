@@ -16,7 +16,7 @@ export function problem(
   const media = (Array.isArray(diffusion) ? diffusion : [diffusion]).map((d: Coefficient) => ({
     diffusion: d,
   }));
-  const exits = walls.map((wall) => (wall.kind === 'reflecting' ? -1 : wall.exit));
+  const exits = walls.map((wall) => ('exit' in wall ? wall.exit : -1));
   return { noise, media, walls: new Map(walls.entries()), exitCount: Math.max(-1, ...exits) + 1 };
 }
 
