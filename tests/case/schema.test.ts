@@ -130,7 +130,7 @@ describe('the published schema', () => {
   });
 
   it('takes a note and a source on every object', () => {
-    const schemas: { properties?: object; description?: string }[] = [];
+    const schemas: { type?: unknown; properties?: object }[] = [];
     const collect = (node: unknown): void => {
       if (typeof node !== 'object' || node === null) return;
       if ('type' in node && node.type === 'object') schemas.push(node);
