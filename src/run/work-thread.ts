@@ -94,6 +94,11 @@ export class WorkThread<Input, Result> {
     }
   }
 
+  /** Starts the thread before there is work, so that the first need not wait for it to load. */
+  warm(): void {
+    if (!this.#closed && this.#worker === undefined) this.#start();
+  }
+
   /** Ends the thread; work in hand fails with kind 'stopped'. */
   async close(): Promise<void> {
     this.#closed = true;

@@ -94,6 +94,7 @@ export function buildServer(options: ServerOptions = {}): Service {
     jobRoutes(routed, behind);
     pageRoutes(routed, options.page ?? join(root, 'dist', 'page'));
   });
+  service.addHook('onListen', async () => behind.desk.warm());
   service.addHook('preClose', async () => behind.streams.endAll());
   service.addHook('onClose', async () => behind.desk.close());
   return service;

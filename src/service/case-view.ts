@@ -71,11 +71,11 @@ function sizeWords({ outline }: Drawing, units: CaseUnits): string {
   return withUnit(`${extent(0).toPrecision(3)} × ${extent(1).toPrecision(3)}`, units.length);
 }
 
-/** What lies in the outline, in words: holes by their common name if they have one ('post 1', 'post 2': '2 posts'). */
+/** What lies in the outline, in words: holes by the word their names share ('post 1', 'far post': '2 posts'). */
 function contents({ holes, innerWalls, regions }: Drawing): string[] {
-  const stems = new Set(holes.map(({ name }) => name.replace(/\s*\d+$/, '')));
-  const [stem] = stems;
-  const kind = stems.size === 1 && stem !== undefined && stem !== '' ? stem : 'hole';
+  const nouns = new Set(holes.map(({ name }) => /(\p{L}+)[\s\d]*$/u.exec(name)?.[1] ?? 'hole'));
+  const [noun] = nouns;
+  const kind = nouns.size === 1 && noun !== undefined ? noun : 'hole';
   return [
     count(holes.length, kind),
     count(innerWalls.length, 'inner wall'),

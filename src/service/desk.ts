@@ -48,6 +48,12 @@ export class Desk {
     });
   }
 
+  /** Starts the threads that the first case will need. */
+  warm(): void {
+    this.reading.warm();
+    this.#threads[0]?.warm();
+  }
+
   /** @throws {CaseError} CASE_TOO_LARGE, DRAWING_TOO_LARGE; {WorkError} by the promise, when the case is refused */
   async upload(upload: CaseUpload): Promise<CaseView> {
     if ('svg' in upload) {

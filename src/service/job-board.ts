@@ -38,6 +38,7 @@ export class JobBoard {
   readonly #jobs = new Map<string, Job>();
   /** Ids, the next to run last. */
   readonly #waiting: string[] = [];
+  /** Numbers of the threads without work, the one to use next last: it is the warmest. */
   readonly #freeSlots: number[];
   readonly #solve: Solve;
   readonly #isAnswered: (caseId: string, layout: string) => boolean;
@@ -52,7 +53,7 @@ export class JobBoard {
     isAnswered: (caseId: string, layout: string) => boolean;
     onFault: (trace: string) => void;
   }) {
-    this.#freeSlots = Array.from({ length: options.threads }, (_, slot) => slot);
+    this.#freeSlots = Array.from({ length: options.threads }, (_, i) => options.threads - 1 - i);
     this.#solve = options.solve;
     this.#isAnswered = options.isAnswered;
     this.#onFault = options.onFault;

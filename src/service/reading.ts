@@ -51,6 +51,11 @@ export class Reading {
     return result.view;
   }
 
+  /** Loads what reading needs before there is something to read. */
+  warm(): void {
+    this.#thread.warm();
+  }
+
   close(): Promise<void> {
     return this.#thread.close();
   }

@@ -100,7 +100,7 @@ it('takes the drawing that a case names along with the case, and from nowhere el
 
 it('refuses drawings that are none, and XML that grows when it is read', async () => {
   const bomb = '<!DOCTYPE svg [<!ENTITY a "aaaaaaaaaa"><!ENTITY b "&a;&a;&a;">]><svg>&b;</svg>';
-  for (const svg of ['', 'no xml', '<svg', bomb, '<svg/>'.repeat(2), '<html></html>']) {
+  for (const svg of ['', 'no xml', '<svg', bomb, '<html></html>']) {
     expect((await errorOf('POST', '/api/drawings', { svg, name: 'a.svg' })).status, svg).toBe(422);
   }
   expect((await errorOf('POST', '/api/drawings', { svg: sheet, name: 'a.exe' })).status).toBe(422);

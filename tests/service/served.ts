@@ -1,7 +1,10 @@
 import type { InjectOptions } from 'fastify';
-import { expect } from 'vitest';
+import { expect, vi } from 'vitest';
 import type { CaseView, JobView, LayoutView } from '../../src/service/contract.ts';
 import { buildServer, type ServerOptions } from '../../src/service/server.ts';
+
+// Threads load and solve: on a busy machine that takes a while.
+vi.setConfig({ testTimeout: 120_000, hookTimeout: 120_000 });
 
 /** A room with a pad at each end; the particle is released everywhere or at a point. Invented. */
 export const room = {
