@@ -1,3 +1,3 @@
 import { App } from './app.ts';
 
-void new App(document.body).begin();
+new App(document.body).begin();

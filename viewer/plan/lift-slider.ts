@@ -49,7 +49,10 @@ export class LiftSlider {
   /** Moves there in 260 ms, slowing down; at once for those who asked for less motion. */
   glide(to: number): void {
     cancelAnimationFrame(this.#frame);
-    if (matchMedia('(prefers-reduced-motion: reduce)').matches) return this.set(to);
+    if (matchMedia('(prefers-reduced-motion: reduce)').matches) {
+      this.set(to);
+      return;
+    }
     const from = this.#lift;
     let began: number | undefined;
     const step = (now: number) => {

@@ -4,7 +4,7 @@ import type { Hidden } from './hidden.ts';
 import type { Isoline } from './isolines.ts';
 import { type LabelRoom, placesAround } from './labels.ts';
 import type { Locator } from './locate.ts';
-import { lengthsAlong, type Px, pathOf, placesAt } from './polyline.ts';
+import { lengthsAlong, type Px, pathOf, placesAt, refined } from './polyline.ts';
 import type { Projection, Rect } from './projection.ts';
 import { catchingStretches, type Stretch } from './stretches.ts';
 import { outwardPx, visibleRuns } from './wall-overlay.ts';
@@ -40,16 +40,9 @@ export function releaseMarks(
   const chosen = layout.starts.find((one) => one.name === start);
   const region = layout.regions.find((one) => one.name === chosen?.region);
   for (const line of region?.lines ?? []) {
-    const lifted = line.map(([x, y]): [number, number, number] => {
-      const value = locator.valueNear(x, y);
-      return [x, y, Number.isNaN(value) ? 0 : value * view.rise];
-    });
-    const runs: Px[][] = [[]];
-    for (const [x, y, h] of lifted) {
-      if (hidden(x, y, h + 1e-3 / view.scale)) runs.push([]);
-      else runs.at(-1)?.push(view.at(x, y, h));
-    }
-    const d = runs.map((run) => pathOf(run)).join('');
+    const d = insideRuns(line, view, hidden, locator)
+      .map((run) => pathOf(run))
+      .join('');
     group.append(svg('path', { class: 'casing thin', d }), svg('path', { class: 'edge', d }));
   }
   if (chosen?.at !== undefined) {
@@ -63,6 +56,21 @@ export function releaseMarks(
     );
   }
   return group;
+}
+
+/** The parts of a line that lie inside the compartment, carried on the surface, and seen. */
+function insideRuns(line: readonly Px[], view: Projection, hidden: Hidden, locator: Locator): Px[][] {
+  const runs: Px[][] = [];
+  let run: Px[] = [];
+  for (const [x, y] of refined(line, 3 / view.scale)) {
+    const height = locator.valueAt(x, y) * view.rise;
+    // Outside the compartment the height is not a number.
+    if (Number.isNaN(height) || hidden(x, y, height + 2 / view.scale)) {
+      if (run.length > 1) runs.push(run);
+      run = [];
+    } else run.push(view.at(x, y, height));
+  }
+  return run.length > 1 ? [...runs, run] : runs;
 }
 
 /** Pins as numbers in circles, readings outside on leaders. `around` is what the drawing covers. */
@@ -88,7 +96,7 @@ export function pinMarks(
       const side = middle[0] + width / 2 < around.left ? 1 : middle[0] - width / 2 > around.right ? -1 : 0;
       const edge: Px =
         side === 0
-          ? [middle[0] - width / 2 - 4, middle[1] - 10]
+          ? [Math.min(middle[0] + width / 2, Math.max(middle[0] - width / 2, at[0])), middle[1] + 18]
           : [middle[0] + side * (width / 2 + 3), middle[1]];
       const size = Math.hypot(edge[0] - at[0], edge[1] - at[1]) || 1;
       const from: Px = [at[0] + (9 * (edge[0] - at[0])) / size, at[1] + (9 * (edge[1] - at[1])) / size];

@@ -222,7 +222,9 @@ export class PlanView {
 
   #repaint(): void {
     const scheme = currentScheme();
-    this.#scene?.paint(scheme, tokenColour('--ink', scheme === 'dark' ? '#EBE8DF' : '#1F2734'));
+    const dark = scheme === 'dark';
+    const ink = tokenColour('--ink', dark ? '#EBE8DF' : '#1F2734');
+    this.#scene?.paint(scheme, ink, tokenColour('--sheet', dark ? '#191E28' : '#FCFAF7'));
   }
 
   #draw(): void {

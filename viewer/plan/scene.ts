@@ -1,6 +1,5 @@
 import {
-  BufferAttribute,
-  BufferGeometry,
+  type BufferGeometry,
   Camera,
   DataTexture,
   DoubleSide,
@@ -18,12 +17,10 @@ import {
 import { fromHex } from '../colour/oklab.ts';
 import { bandColours, type Scheme } from '../colour/ramp.ts';
 import type { Bands } from '../words/nice-steps.ts';
-import { borderLoops, type Field, nodeGradients } from './field.ts';
+import { borderLoops, type Field } from './field.ts';
 import type { Projection } from './projection.ts';
+import { curtainGeometry, rimGeometry, surfaceGeometry, uprightGeometry } from './scene-geometry.ts';
 import { LINE_FRAGMENT, LINE_VERTEX, SURFACE_FRAGMENT, SURFACE_VERTEX } from './shaders.ts';
-
-/** How the field is banded: step in the case's time unit. */
-export type CaseBands = Bands;
 
 /** The surface, its rim and its uprights on the graphics card. Nothing is rebuilt while the lift moves. */
 export class PlanScene {
@@ -31,15 +28,17 @@ export class PlanScene {
   readonly #scene = new Scene();
   readonly #camera = new Camera();
   readonly #surface: ShaderMaterial;
-  readonly #lines: { readonly material: ShaderMaterial; readonly object: LineSegments; fromLift: boolean }[] =
-    [];
-  readonly #bands: CaseBands;
+  /** What hangs from the surface: shown as soon as it is lifted. */
+  readonly #hanging: { readonly material: ShaderMaterial; readonly object: LineSegments | Mesh }[] = [];
+  readonly #curtain: ShaderMaterial;
+  readonly #bands: Bands;
 
   /**
+   * @param bands step in the case's time unit
    * @param fullRise height of the longest time over the longest time when fully lifted, length per time
    * @throws {Error} when the browser gives no WebGL context
    */
-  constructor(canvas: HTMLCanvasElement, field: Field, bands: CaseBands, fullRise: number) {
+  constructor(canvas: HTMLCanvasElement, field: Field, bands: Bands, fullRise: number) {
     // Kept drawing buffer: a screenshot or a print may come long after the last frame.
     this.#renderer = new WebGLRenderer({ canvas, alpha: true, antialias: true, preserveDrawingBuffer: true });
     this.#renderer.setClearColor(0x000000, 0);
@@ -63,33 +62,25 @@ export class PlanScene {
     surface.frustumCulled = false;
     this.#scene.add(surface);
     const loops = borderLoops(field);
+    this.#curtain = lineMaterial(1, 0);
+    const curtain = new Mesh(curtainGeometry(field, bands, loops), this.#curtain);
+    curtain.frustumCulled = false;
+    this.#hanging.push({ material: this.#curtain, object: curtain });
+    this.#scene.add(curtain);
     this.#addLines(rimGeometry(field, bands, loops), 0.9, 0.004);
-    this.#addLines(uprightGeometry(field, bands, loops), 0.42, 0);
+    this.#addLines(uprightGeometry(field, bands, loops), 0.34, 0.002);
   }
 
   #addLines(geometry: BufferGeometry, strength: number, nearer: number): void {
-    const material = new ShaderMaterial({
-      vertexShader: LINE_VERTEX,
-      fragmentShader: LINE_FRAGMENT,
-      transparent: true,
-      premultipliedAlpha: true,
-      blending: NormalBlending,
-      depthWrite: false,
-      uniforms: {
-        ink: { value: new Vector3() },
-        strength: { value: strength },
-        nearer: { value: nearer },
-        riseOfStep: { value: 0 },
-      },
-    });
+    const material = lineMaterial(strength, nearer);
     const object = new LineSegments(geometry, material);
     object.frustumCulled = false;
-    this.#lines.push({ material, object, fromLift: true });
+    this.#hanging.push({ material, object });
     this.#scene.add(object);
   }
 
   /** Takes over the colours of a scheme. */
-  paint(scheme: Scheme, ink: string): void {
+  paint(scheme: Scheme, ink: string, sheet: string): void {
     const colours = bandColours(scheme, this.#bands.count);
     const bytes = new Uint8Array(4 * colours.length);
     colours.forEach((rgb, i) => {
@@ -101,7 +92,8 @@ export class PlanScene {
     texture.needsUpdate = true;
     this.#surface.uniforms['bands']?.value?.dispose?.();
     setUniform(this.#surface, 'bands', texture);
-    for (const { material } of this.#lines) setUniform(material, 'ink', new Vector3(...fromHex(ink)));
+    for (const { material } of this.#hanging) setUniform(material, 'ink', new Vector3(...fromHex(ink)));
+    setUniform(this.#curtain, 'ink', new Vector3(...fromHex(sheet)));
   }
 
   /** Draws one frame. `size` in px of the page, `pixels` device px per px. */
@@ -114,7 +106,7 @@ export class PlanScene {
     setUniform(this.#surface, 'pixels', pixels);
     setUniform(this.#surface, 'lift', view.lift);
     setUniform(this.#surface, 'riseOfStep', riseOfStep);
-    for (const { material, object } of this.#lines) {
+    for (const { material, object } of this.#hanging) {
       setUniform(material, 'riseOfStep', riseOfStep);
       object.visible = view.lift > 0;
     }
@@ -134,78 +126,26 @@ export class PlanScene {
   }
 }
 
+/** Material of lines, and of the curtain that hides what stands behind it. */
+function lineMaterial(strength: number, nearer: number): ShaderMaterial {
+  return new ShaderMaterial({
+    vertexShader: LINE_VERTEX,
+    fragmentShader: LINE_FRAGMENT,
+    transparent: strength < 1,
+    premultipliedAlpha: true,
+    blending: NormalBlending,
+    depthWrite: strength === 1,
+    side: DoubleSide,
+    uniforms: {
+      ink: { value: new Vector3() },
+      strength: { value: strength },
+      nearer: { value: nearer },
+      riseOfStep: { value: 0 },
+    },
+  });
+}
+
 function setUniform(material: ShaderMaterial, name: string, value: unknown): void {
   const uniform = material.uniforms[name];
   if (uniform !== undefined) uniform.value = value;
-}
-
-function surfaceGeometry(field: Field, bands: CaseBands, fullRise: number): BufferGeometry {
-  const { nodeCount, nodes, values } = field;
-  const position = new Float32Array(3 * nodeCount);
-  const time = new Float32Array(nodeCount);
-  for (let i = 0; i < nodeCount; i++) {
-    position[3 * i] = nodes[2 * i] ?? 0;
-    position[3 * i + 1] = nodes[2 * i + 1] ?? 0;
-    time[i] = (values[i] ?? 0) / bands.step;
-  }
-  const slope = nodeGradients(field).map((value) => value * fullRise);
-  const geometry = new BufferGeometry();
-  geometry.setAttribute('position', new BufferAttribute(position, 3));
-  geometry.setAttribute('time', new BufferAttribute(time, 1));
-  geometry.setAttribute('slope', new BufferAttribute(slope, 2));
-  geometry.setIndex(new BufferAttribute(new Uint32Array(field.triangles), 1));
-  return geometry;
-}
-
-function lineGeometry(position: number[], time: number[]): BufferGeometry {
-  const geometry = new BufferGeometry();
-  geometry.setAttribute('position', new BufferAttribute(new Float32Array(position), 3));
-  geometry.setAttribute('time', new BufferAttribute(new Float32Array(time), 1));
-  return geometry;
-}
-
-function rimGeometry(field: Field, bands: CaseBands, loops: readonly number[][]): BufferGeometry {
-  const position: number[] = [];
-  const time: number[] = [];
-  for (const loop of loops) {
-    loop.forEach((node, i) => {
-      for (const end of [node, loop[(i + 1) % loop.length] ?? node]) {
-        position.push(field.nodes[2 * end] ?? 0, field.nodes[2 * end + 1] ?? 0, 0);
-        time.push((field.values[end] ?? 0) / bands.step);
-      }
-    });
-  }
-  return lineGeometry(position, time);
-}
-
-/** Uprights every 1/170 of the longest side, evenly along each border whatever the mesh does there. */
-function uprightGeometry(field: Field, bands: CaseBands, loops: readonly number[][]): BufferGeometry {
-  const { nodes, values } = field;
-  let [x0, x1, y0, y1] = [Infinity, -Infinity, Infinity, -Infinity];
-  for (const node of loops.flat()) {
-    x0 = Math.min(x0, nodes[2 * node] ?? 0);
-    x1 = Math.max(x1, nodes[2 * node] ?? 0);
-    y0 = Math.min(y0, nodes[2 * node + 1] ?? 0);
-    y1 = Math.max(y1, nodes[2 * node + 1] ?? 0);
-  }
-  const apart = Math.max(x1 - x0, y1 - y0) / 170;
-  const position: number[] = [];
-  const time: number[] = [];
-  for (const loop of loops) {
-    let next = 0;
-    loop.forEach((from, i) => {
-      const to = loop[(i + 1) % loop.length] ?? from;
-      const [ax, ay] = [nodes[2 * from] ?? 0, nodes[2 * from + 1] ?? 0];
-      const [dx, dy] = [(nodes[2 * to] ?? 0) - ax, (nodes[2 * to + 1] ?? 0) - ay];
-      const length = Math.hypot(dx, dy);
-      for (; next < length; next += apart) {
-        const part = next / length;
-        const value = (values[from] ?? 0) + part * ((values[to] ?? 0) - (values[from] ?? 0));
-        position.push(ax + part * dx, ay + part * dy, 0, ax + part * dx, ay + part * dy, 0);
-        time.push(0, value / bands.step);
-      }
-      next -= length;
-    });
-  }
-  return lineGeometry(position, time);
 }

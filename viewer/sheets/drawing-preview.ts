@@ -25,7 +25,7 @@ function copy(
   from: Element,
   into: SVGElement,
   count: { left: number },
-  named: Map<string, SVGGraphicsElement>,
+  named: Map<string, SVGGeometryElement>,
 ): void {
   for (const child of from.children) {
     if (count.left <= 0) return;
@@ -36,7 +36,7 @@ function copy(
       const shape = document.createElementNS(
         'http://www.w3.org/2000/svg',
         child.localName,
-      ) as SVGGraphicsElement;
+      ) as SVGGeometryElement;
       for (const name of [...attributes, 'transform']) {
         const value = child.getAttribute(name);
         if (value !== null) shape.setAttribute(name, value);
@@ -63,19 +63,19 @@ export function drawingPreview(text: string, names: readonly string[]): SVGSVGEl
   });
   const file = new DOMParser().parseFromString(text, 'image/svg+xml');
   if (file.querySelector('parsererror') !== null) return root;
-  const named = new Map<string, SVGGraphicsElement>();
+  const named = new Map<string, SVGGeometryElement>();
   const lines = svg('g');
   root.append(lines);
   copy(file.documentElement, lines, { left: MOST_SHAPES }, named);
-  requestAnimationFrame(() => fit(root, lines, names, named));
+  requestAnimationFrame(() => fitAndNumber(root, lines, names, named));
   return root;
 }
 
-function fit(
+function fitAndNumber(
   root: SVGSVGElement,
   lines: SVGGElement,
   names: readonly string[],
-  named: ReadonlyMap<string, SVGGraphicsElement>,
+  named: ReadonlyMap<string, SVGGeometryElement>,
 ): void {
   if (!root.isConnected) return;
   const box = lines.getBBox();
@@ -93,16 +93,16 @@ function fit(
     const shape = named.get(name);
     const own = shape?.getBBox();
     const toScreen = shape?.getScreenCTM();
-    if (own === undefined || toScreen === null || toScreen === undefined) return;
-    const inside = own.width * own.height < 0.4 * box.width * box.height;
-    const local = new DOMPoint(inside ? own.x + own.width / 2 : own.x, own.y + own.height / 2);
-    const at = local.matrixTransform(toScreen).matrixTransform(matrix.inverse());
-    const label = svg(
-      'text',
-      { class: 'found-number', x: at.x + (inside ? 0 : 14 * unit), y: at.y + 4.5 * unit },
-      String(i + 1),
-    );
+    if (shape === undefined || own === undefined || toScreen === null || toScreen === undefined) return;
+    const small = own.width * own.height < 0.3 * box.width * box.height && own.width * own.height > 0;
+    // A large or open shape carries its number on its line.
+    const local = small
+      ? new DOMPoint(own.x + own.width / 2, own.y + own.height / 2)
+      : shape.getPointAtLength(0.3 * shape.getTotalLength());
+    const at = DOMPoint.fromPoint(local).matrixTransform(toScreen).matrixTransform(matrix.inverse());
+    const label = svg('text', { class: 'found-number', x: at.x, y: at.y + 4.5 * unit }, String(i + 1));
     label.style.setProperty('font-size', `${13 * unit}px`);
+    label.style.setProperty('stroke-width', `${9 * unit}px`);
     root.append(label);
   });
 }

@@ -6,6 +6,11 @@ export interface GivenFile {
   readonly text: string;
 }
 
+/** The text of each file. */
+export function readFiles(files: readonly File[]): Promise<GivenFile[]> {
+  return Promise.all(files.map(async (file) => ({ name: file.name, text: await file.text() })));
+}
+
 /** A button that opens the file dialogue and hands on what was chosen. */
 export function fileButton(
   words: string,

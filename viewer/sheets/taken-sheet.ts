@@ -57,7 +57,7 @@ export function takenSheet(data: TakenData): HTMLElement[] {
   );
   const list = el('ol', { class: 'shapes' });
   const boxes: HTMLInputElement[] = [];
-  drawing.shapes.forEach((shape, i) => list.append(shapeRow(shape, i + 1, form, boxes)));
+  list.append(...drawing.shapes.map((shape, i) => shapeRow(shape, i + 1, form, boxes)));
   const fields = el('div', { class: 'fields' });
   if (drawing.drawingUnit === undefined) {
     fields.append(

@@ -74,7 +74,8 @@ export function fluxTop(walls: readonly WallView[]): { readonly top: number; rea
     for (const [, value] of curve) most = Math.max(most, value);
   }
   const wanted = Math.min(most, 2 * mean);
-  const step = niceStep(wanted, 2);
+  // An even number of steps, so that the middle of the scale is a nice number too.
+  const step = 2 * niceStep(wanted, 4);
   const top = wanted > 0 ? step * Math.ceil(wanted / step - 1e-9) : 0;
   return { top, cut: most > top };
 }

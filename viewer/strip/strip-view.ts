@@ -17,7 +17,7 @@ export interface StripData {
   readonly light: (stretch: number | undefined) => void;
 }
 
-const CURVE = 58;
+const CURVE = 68;
 const BELOW = 24;
 const LEFT = 34;
 
@@ -27,6 +27,7 @@ export class StripView {
   readonly #data: StripData;
   readonly #body = el('div', { class: 'strip-body' });
   readonly #sizes: ResizeObserver;
+  readonly #note = el('span', { class: 'strip-note' });
   #all = false;
   #width = 0;
 
@@ -59,12 +60,15 @@ export class StripView {
   #posts(): HTMLElement {
     const { idle } = loopsByUse(this.#data.layout);
     const line = el('p', { class: 'strip-posts' });
-    if (idle.length === 0) return line;
+    if (idle.length === 0) {
+      line.append(this.#note);
+      return line;
+    }
     const names = idle.map((loop) => loop.name);
     const words =
       names.length > 6
-        ? `${names.length} posts and inner walls turn back.`
-        : `${names.length === 1 ? names[0] : `${names.slice(0, -1).join(', ')} and ${names.at(-1)}`} ${names.length === 1 ? 'turns' : 'turn'} back.`;
+        ? `Nothing is caught on ${names.length} posts and inner walls.`
+        : `Nothing is caught on ${names.length === 1 ? names[0] : `${names.slice(0, -1).join(', ')} and ${names.at(-1)}`}.`;
     const toggle = button('Show their walls', () => {
       this.#all = !this.#all;
       toggle.textContent = this.#all ? 'Hide their walls' : 'Show their walls';
@@ -73,7 +77,7 @@ export class StripView {
     });
     toggle.className = 'plain link';
     toggle.setAttribute('aria-expanded', 'false');
-    line.append(words, ' ', toggle);
+    line.append(words, toggle, this.#note);
     return line;
   }
 
@@ -108,17 +112,16 @@ export class StripView {
       parts.push(el('div', { class: 'row-place' }, drawing));
     });
     const axis = this.#axis(width, scale);
-    this.#body.replaceChildren(tip, ...parts, axis, list);
+    this.#body.replaceChildren(...parts, axis, list, tip);
     const tops = parts.map((part) => (part as HTMLElement).offsetTop);
     for (const item of list.querySelectorAll<HTMLElement>('button')) {
       const row = Number(item.dataset['row']);
       item.style.setProperty('top', `${tops[row] ?? 0}px`);
       item.style.setProperty('height', `${(parts[row] as HTMLElement | undefined)?.offsetHeight ?? 24}px`);
     }
-    if (flux.cut)
-      tip.dataset['note'] =
-        'Share caught per length has no bound at the ends of a pad: its peaks are cut off.';
-    tip.textContent = tip.dataset['note'] ?? '';
+    this.#note.textContent = flux.cut
+      ? 'Peaks at the ends of pads are cut off: the share caught per length has no bound there.'
+      : '';
   }
 
   #loop(
@@ -243,9 +246,13 @@ export class StripView {
     item.style.setProperty('left', `${(middle - width / 2).toFixed(1)}px`);
     item.style.setProperty('width', `${width.toFixed(1)}px`);
     const show = (on: boolean) => () => {
-      tip.replaceChildren(
-        ...(on ? [el('strong', {}, title), el('span', {}, below)] : [tip.dataset['note'] ?? '']),
-      );
+      tip.replaceChildren(...(on ? [el('strong', {}, title), el('span', {}, below)] : []));
+      // Beside the stretch, on the side where there is room.
+      const toLeft = middle > this.#width / 2;
+      const edge = toLeft ? this.#width - middle + width / 2 + 10 : middle + width / 2 + 10;
+      tip.style.setProperty(toLeft ? 'right' : 'left', `${edge.toFixed(1)}px`);
+      tip.style.removeProperty(toLeft ? 'left' : 'right');
+      tip.style.setProperty('top', `${item.offsetTop}px`);
       this.#data.light(on ? stretch.id : undefined);
     };
     item.addEventListener('pointerenter', show(true));

@@ -18,9 +18,9 @@ export interface Bands {
   readonly count: number;
 }
 
-/** 17 to 36 bands that reach from 0 over the longest time. */
+/** 18 to 44 bands that reach from 0 over the longest time. */
 export function bandsFor(longest: number): Bands {
-  const step = niceStep(longest, 32);
+  const step = niceStep(longest, 44);
   const needed = longest > 0 ? Math.ceil(longest / step - 1e-9) : 1;
   return { step, count: 4 * Math.ceil(needed / 4) };
 }

@@ -42,6 +42,15 @@ export function numberText(value: number, figures = 3): string {
   return fixedText(value, decimalsFor(value, figures));
 }
 
+/** A number somebody typed, as short as it is: 80 and not 80.0. */
+export function givenText(value: number): string {
+  const short = Number(value.toPrecision(6));
+  const [, decimals = ''] = String(Math.abs(short)).split('.');
+  const size = Math.abs(short);
+  const asPower = size !== 0 && (size < 1e-3 || size >= 1e7);
+  return asPower ? numberText(short) : fixedText(short, decimals.length);
+}
+
 /** A number with its unit; the unit is left out where the case has none. */
 export function withUnit(text: string, unit: string): string {
   return unit === '' ? text : `${text}\u00a0${unit}`;

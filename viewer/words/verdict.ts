@@ -1,6 +1,6 @@
 import type { Asked, Figure } from './answers.ts';
 import type { DisplayUnit } from './display-unit.ts';
-import { numberText, withUnit } from './number-text.ts';
+import { givenText, numberText, withUnit } from './number-text.ts';
 
 /** What is said of a figure and of what was asked of it. 'Surely' only for a proven bracket. */
 
@@ -23,6 +23,12 @@ export function valueText(figure: string, value: number, time: DisplayUnit): str
   return isShare(figure)
     ? withUnit(numberText(100 * value), '%')
     : withUnit(numberText(value * time.factor), time.name);
+}
+
+function limitText(figure: string, limit: number, time: DisplayUnit): string {
+  return isShare(figure)
+    ? withUnit(givenText(100 * limit), '%')
+    : withUnit(givenText(limit * time.factor), time.name);
 }
 
 /** A distance between two values: percentage points for shares. */
@@ -58,7 +64,7 @@ export function verdictWords(
   const low = bracket?.low ?? value;
   const high = bracket?.high ?? value;
   const proven = bracket?.proven === true;
-  const limitWords = `must be ${under ? 'under' : 'at least'} ${valueText(asked.figure, limit, time)}`;
+  const limitWords = `must be ${under ? 'under' : 'at least'} ${limitText(asked.figure, limit, time)}`;
   const hasBracket = bracket?.low !== undefined && bracket.high !== undefined;
   const beneath = proven
     ? {}
