@@ -68,12 +68,18 @@ describe('strip with constant drift v, D = 1', () => {
   });
 
   it('the drift stays out of the wall condition of u: 0.1441 at a wall with κ = 3, not 0.4323', () => {
-    // x = 0 reflecting, x = 1 partly absorbing, v = 2: u'' + 2u' = −1, u'(0) = 0 gives u' = −(1 − e^−2x)/2, and
-    // u'(1) + 3u(1) = 0 gives u(1) = (1 − e^−2)/6 = 0.1441; with the drift in it, u' + (3 − 2)u = 0, three times that.
+    // x = 0 reflecting, x = 1 partly absorbing: u'' + vu' = −1, u'(0) = 0 gives u' = −(1 − e^−vx)/v, and
+    // u'(1) + 3u(1) = 0 gives u(1) = (1 − e^−v)/3v. With the drift in it, u' + (3 − v)u = 0, three times that at v = 2.
     const mesh = strip(100);
     const walls = [reflecting, partly(3), reflecting, reflecting];
-    const u = meanExitTime(assemble(mesh, drifting(1, push(2), walls)));
-    expect(relativeError(u[nodeAt(mesh.nodes, 1, 0.05)], (1 - Math.exp(-2)) / 6)).toBeLessThan(1e-3);
+    for (const [v, exact] of [
+      [2, 0.1441108],
+      [-2, 1.0648427],
+    ] as const) {
+      expect(-Math.expm1(-v) / (3 * v)).toBeCloseTo(exact, 6);
+      const u = meanExitTime(assemble(mesh, drifting(1, push(v), walls)));
+      expect(relativeError(u[nodeAt(mesh.nodes, 1, 0.05)], -Math.expm1(-v) / (3 * v))).toBeLessThan(1e-3);
+    }
   });
 });
 

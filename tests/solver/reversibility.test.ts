@@ -128,5 +128,7 @@ describe('the irreversible process', () => {
     const system = assemble(mesh, withMedia([{ diffusion: constant(1), drift: turning(1000) }]));
     const solution = prepare(system).solve(system.load);
     expect([solution.converged, solution.iterations]).toEqual([true, 0]);
+    const adjoint = prepare(system).solveAdjoint(system.load);
+    expect([adjoint.converged, adjoint.iterations]).toEqual([true, 0]);
   });
 });
