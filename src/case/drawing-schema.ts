@@ -47,7 +47,10 @@ export const shape = Type.Union(
   },
 );
 
-const shapeName = Type.String({ description: 'the name of a shape in the drawing file' });
+const shapeOrName = Type.Union([Type.String(), shape], {
+  description:
+    'the name of a shape in the drawing file, or a shape such as { "circle": [x, y], "radius": 0.5 }',
+});
 
 const tolerance = Type.Optional(length('the gap to be closed'));
 const depth = Type.Optional(varying('a depth such as "0.1 mm"'));
@@ -75,9 +78,11 @@ const fileDrawing = object(
       description: 'a .svg, .geojson or .wkt file beside the case, such as "chamber.svg"',
     }),
     take: Type.Optional(textOrTexts('the layer or layers to take, by name')),
-    outline: Type.Optional(shapeName),
-    innerWalls: Type.Optional(named(shapeName, 'inner walls by name')),
-    regions: Type.Optional(named(shapeName, 'regions by name')),
+    y: up,
+    outline: Type.Optional(shapeOrName),
+    holes: Type.Optional(named(shapeOrName, 'holes by name')),
+    innerWalls: Type.Optional(named(shapeOrName, 'inner walls by name')),
+    regions: Type.Optional(named(shapeOrName, 'regions by name')),
     ignore: Type.Optional(textOrTexts('names of shapes to leave out')),
     scale: Type.Optional(
       object(

@@ -21,7 +21,7 @@ const words = {
   'time in': 'the time in a region',
   'decay time': 'the decay time',
   within: 'what ranges of inputs do to the answers',
-  bracket: 'a bracket asked for (values are estimates)',
+  bracket: 'a guaranteed bracket of a given width',
   paths: 'the check by trajectories',
   survivalAt: 'survival at given times',
   occupationOf: 'the time spent in regions',

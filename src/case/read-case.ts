@@ -136,7 +136,7 @@ class CaseReading {
     const { raw, ctx } = this;
     const { drawing } = raw;
     const groups: [string, [string, unknown][], string][] = [
-      ['drawing.holes', 'holes' in drawing ? entriesOf(drawing.holes) : [], 'hole'],
+      ['drawing.holes', entriesOf<unknown>(drawing.holes), 'hole'],
       ['drawing.innerWalls', entriesOf<unknown>(drawing.innerWalls), 'inner wall'],
       ['drawing.regions', entriesOf<unknown>(drawing.regions), 'region'],
       ['walls', entriesOf<unknown>(raw.walls), 'wall'],

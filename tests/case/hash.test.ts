@@ -15,6 +15,9 @@ describe('the hash of a case', () => {
     expect(hash({ starts: { anywhere: { evenIn: 'everywhere' } } })).toBe(first);
     expect(hash({ accuracy: { seed: 1, nodes: 500_000 } })).toBe(first);
     expect(hash({ asked: [{ figure: 'mean', start: 'anywhere' }] })).toBe(first);
+    const { drawing } = smallCase() as { drawing: object };
+    const post = (circle: unknown, radius: unknown) => ({ ...drawing, holes: { post: { circle, radius } } });
+    expect(hash({ drawing: post(['500 um', '0.5 mm'], '0.01 cm') })).toBe(first);
     expect(readObject(smallCase(), { file: 'another/name.json' }).hash).toBe(first);
   });
 

@@ -68,7 +68,7 @@ describe('the example of the case form', () => {
       'what ranges of inputs do to the answers (particle.diffusion): not available yet',
       'permeable inner walls (layout "coated post", baffle): not available yet',
       'times to N % (figure "time to 95 %"): not available yet',
-      'a bracket asked for (values are estimates) (accuracy.bracket): not available yet',
+      'a guaranteed bracket of a given width (accuracy.bracket): not available yet',
       'the check by trajectories (accuracy.paths): not available yet',
     ]);
     expect(read.layouts.map((layout) => layout.notAvailable)).toEqual([
