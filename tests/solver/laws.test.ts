@@ -2,9 +2,11 @@ import fc from 'fast-check';
 import { expect, it } from 'vitest';
 import {
   assemble,
+  type Coefficient,
   evenStart,
   exitDensity,
   exitShares,
+  lostShare,
   meanExitTime,
   type Problem,
   valueFromStart,
@@ -31,13 +33,20 @@ const wall = (exit: number): fc.Arbitrary<Wall> =>
 const walls = fc
   .tuple(wall(0), wall(1), wall(2), wall(3))
   .filter((all) => all.some((w) => w.kind !== 'reflecting'));
-const media = fc
+const diffusions = fc
   .tuple(positive, positive, fc.double({ min: -3, max: 3, noNaN: true }))
-  .map(([left, right, slope]) => [varying((x) => left * Math.exp(slope * x)), constant(right)]);
+  .map(([left, right, slope]) => [varying((x) => left * Math.exp(slope * x)), constant(right)] as const);
+const small = fc.double({ min: -20, max: 20, noNaN: true });
+/** A linear drift, in general irreversible, and a loss. */
+const extras = fc.record({
+  push: fc.tuple(small, small, small, small, small, small),
+  loss: fc.oneof(fc.constant(0), fc.double({ min: 1e-6, max: 5, noNaN: true })),
+});
 const cases = fc.record({
   ...{
     walls,
-    media,
+    diffusions,
+    extras: fc.option(extras, { nil: undefined }),
     noise: fc.constantFrom(...conventions),
     height: fc.double({ min: 0.3, max: 3, noNaN: true }),
   },
@@ -51,7 +60,20 @@ const meshOf = (c: Drawn) =>
     ...{ x: [0, 1], y: [0, c.height], columns: c.columns, rows: c.rows, regionSets: [[], [0]] },
     region: (x) => (x < 0.5 ? 0 : 1),
   });
-const problemOf = (c: Drawn): Problem => ({ ...problem(c.media, c.walls, c.noise), exitCount: 4 });
+/** The drawn problem with every rate, D, b, κ and c, multiplied. */
+function problemOf(c: Drawn, times = 1): Problem {
+  const media = c.diffusions.map((d) => {
+    const diffusion: Coefficient =
+      d.kind === 'constant' ? constant(times * d.value) : varying((x, y) => times * d.at(x, y));
+    if (!c.extras) return { diffusion };
+    const [a, b, e, f, g, h] = c.extras.push;
+    const x = varying((px, py) => times * (a + b * px + e * py));
+    const y = varying((px, py) => times * (f + g * px + h * py));
+    return { diffusion, drift: { kind: 'components' as const, x, y }, loss: constant(times * c.extras.loss) };
+  });
+  const faster = (w: Wall): Wall => (w.kind === 'partlyAbsorbing' ? partly(times * w.kappa, w.exit) : w);
+  return { ...problem(constant(1), c.walls.map(faster), c.noise), media, exitCount: 4 };
+}
 
 // The discrete operator is the generator of a jump process: rates ≥ 0, rows sum to −slack. Eliminating without
 // subtraction keeps every entry's relative error near n·2⁻⁵³; 1e-11 leaves a wide margin for these small meshes.
@@ -62,7 +84,8 @@ const near = (value: number | undefined, expected: number): void => {
 it('shares lie in [0, 1] and sum to 1 at every node: each jump path ends in exactly one sink', () => {
   fc.assert(
     fc.property(cases, (c) => {
-      const shares = exitShares(assemble(meshOf(c), problemOf(c)));
+      const system = assemble(meshOf(c), problemOf(c));
+      const shares = [...exitShares(system), lostShare(system)];
       for (let i = 0; i < (shares[0]?.length ?? 0); i++) {
         let sum = 0;
         for (const field of shares) {
@@ -112,17 +135,12 @@ it('raising κ or making a wall absorbing never raises u at any node: A grows on
   );
 });
 
-it('D and κ times 2 halve u: α of the row scaling cancels between A and load', () => {
-  const doubled = (w: Wall): Wall => (w.kind === 'partlyAbsorbing' ? partly(2 * w.kappa, w.exit) : w);
+it('D, b, κ and c times 2 halve u: β and the ratio of A to the load are unchanged', () => {
   fc.assert(
     fc.property(cases, (c) => {
       const mesh = meshOf(c);
       const u = meanExitTime(assemble(mesh, problemOf(c)));
-      const twice = c.media.map((d) =>
-        d.kind === 'constant' ? constant(2 * d.value) : varying((x, y) => 2 * d.at(x, y)),
-      );
-      const faster = { ...problem(twice, c.walls.map(doubled), c.noise), exitCount: 4 };
-      meanExitTime(assemble(mesh, faster)).forEach((value, i) => {
+      meanExitTime(assemble(mesh, problemOf(c, 2))).forEach((value, i) => {
         near(value, (u[i] ?? Number.NaN) / 2);
       });
     }),
@@ -189,10 +207,7 @@ it('shares from the adjoint equal shares from the fields, and sum to 1: ρᵀA�
       const system = assemble(mesh, problemOf(c));
       const start = evenStart(mesh, (set) => set === 0);
       const density = exitDensity(system, start);
-      near(
-        density.caught.reduce((a, b) => a + b, 0),
-        1,
-      );
+      near(density.caught.reduce((a, b) => a + b, 0) + density.lost, 1);
       exitShares(system).forEach((field, exit) => {
         near(density.byExit[exit], valueFromStart(start, field));
       });
