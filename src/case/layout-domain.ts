@@ -46,7 +46,7 @@ export interface LayoutDomain {
  * place, the last listed counts: an inner region is listed after the one around it.
  *
  * @throws {CaseError} WALL_KINDS_OVERLAP where two walls of the layout lie on one stretch, WALL_KIND_NOT_POSSIBLE for
- *   a wall kind that cannot be computed or a wall on nothing but holes left out
+ *   a wall on nothing but holes left out
  */
 export function layoutDomain(theCase: Case, layout: Layout): LayoutDomain {
   const { drawing, particle } = theCase;

@@ -33,7 +33,7 @@ export function claimsOf(layout: Layout, chains: readonly Chain[], exits: string
         'Take it out of the layout, or do not leave the hole out',
       );
     }
-    const physics = physicsOf(assignment, layout, exits);
+    const physics = physicsOf(assignment, exits);
     return there.map(({ loop, spans }) => ({
       wall: wall.name,
       loop,
@@ -43,8 +43,7 @@ export function claimsOf(layout: Layout, chains: readonly Chain[], exits: string
   });
 }
 
-function physicsOf(assignment: Assignment, layout: Layout, exits: string[]): Wall {
-  const { kind, wall } = assignment;
+function physicsOf({ kind, wall }: Assignment, exits: string[]): Wall {
   switch (kind.kind) {
     case 'reflecting':
       return { kind: 'reflecting' };
@@ -53,12 +52,7 @@ function physicsOf(assignment: Assignment, layout: Layout, exits: string[]): Wal
     case 'partlyAbsorbing':
       return { kind: 'partlyAbsorbing', kappa: kind.kappa.value, exit: exits.push(wall.name) - 1 };
     case 'permeable':
-      throw impossible(
-        layout,
-        assignment,
-        'permeable inner walls are not available yet',
-        'Make it "reflecting" or "absorbing", or solve another layout',
-      );
+      return { kind: 'permeable', permeability: kind.permeability.value };
   }
 }
 

@@ -271,7 +271,7 @@ it('refuses two kinds on one stretch with the place and both names, and lets wal
   expect(touching.exits).toEqual(['a', 'b']);
 });
 
-it('says plainly that permeable walls are not available yet', () => {
+it('hands a permeable inner wall on without making an exit of it', () => {
   const drawing = {
     outline: { rectangle: [0, 0, 4, 2] },
     innerWalls: {
@@ -283,8 +283,12 @@ it('says plainly that permeable walls are not available yet', () => {
       },
     },
   };
-  const kind: WallKind = { kind: 'permeable', permeability: { value: 1 } };
-  expect(refusalOf(() => cut({ drawing, walls: { fin: [{ on: 'fin' }, kind] } })).what).toContain(
-    'not available yet',
-  );
+  const kind: WallKind = { kind: 'permeable', permeability: { value: 3 } };
+  const { pieces, exits, junctions } = cut({ drawing, walls: { fin: [{ on: 'fin' }, kind] } });
+  expect([...pieces.values()].at(-1)).toMatchObject({
+    wall: 'fin',
+    physics: { kind: 'permeable', permeability: 3 },
+  });
+  expect(exits).toEqual([]);
+  expect(junctions).toHaveLength(2);
 });
