@@ -80,6 +80,20 @@ it('says a running job is stopped at once, tells its solve, and keeps its thread
   expect(board.state(id).view.state).toBe('stopped');
 });
 
+it('leaves a stopped job stopped, whatever its solve then ends with', async () => {
+  for (const late of [
+    undefined,
+    stopped(),
+    new CaseError('NO_WAY_OUT', 'Nothing catches', {}, 'Add a pad'),
+  ]) {
+    const { board, begun } = boardOf(1);
+    const { view } = board.state(board.ask('case', 'a').id);
+    const after = board.cancel(view.id);
+    await begun[0]?.end(late);
+    expect(board.state(view.id).view).toEqual(after);
+  }
+});
+
 it('numbers the changes of a job upwards and never goes back in what is done', async () => {
   const { board, begun } = boardOf(1);
   const { id } = board.ask('case', 'a');
