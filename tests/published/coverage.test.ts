@@ -1,0 +1,70 @@
+import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { expect, it } from 'vitest';
+import { listedChecks } from './listed.ts';
+
+/** Checks that no test of this folder makes, each with what stands in the way or where it is made instead. */
+const elsewhere: Readonly<Record<string, string>> = {
+  'strip-AA-surv': 'survival',
+  'strip-AA-drift1': 'drift',
+  'strip-AA-drift20': 'drift',
+  'strip-AA-drift-5': 'drift',
+  'strip-RA-drift2': 'drift',
+  'strip-RA-drift-2': 'drift',
+  'strip-OU-k1': 'drift',
+  'strip-OU-k4': 'drift',
+  'strip-AA-kill1': 'loss',
+  'strip-RRob-rate': 'decay time',
+  'disk-A-moments': 'moments',
+  'disk-A-surv': 'survival',
+  'disk-eigs': 'decay time',
+  'disk-A-drift1': 'drift',
+  'disk-A-drift4': 'drift',
+  'disk-A-OU1': 'drift',
+  'disk-A-occ': 'occupation',
+  'annulus-eigs': 'decay time',
+  'square-A-surv': 'survival',
+  'square-A-surv-uniform': 'survival',
+  'ellipse-aniso-30': 'tensor D',
+  'rect-aniso': 'tensor D',
+  'rect-eigs': 'decay time',
+  'L-eig': 'decay time',
+  'kramers-sep-0.1': 'drift',
+  'kramers-2d-0.1': 'drift',
+  'square-A-drift-3_4': 'drift',
+  'rel-survival': 'survival',
+  'rel-cond': 'mean time given an exit',
+  'rel-scale-length': 'tests/laws',
+  'rel-scale-D': 'tests/laws',
+  'rel-rotate': 'tests/laws',
+  'rel-positive': 'tests/laws',
+  'rel-monotone-wall': 'tests/laws',
+  'rel-shares': 'tests/laws',
+  'rel-conv': 'tests/bench/rates.bench.ts',
+};
+
+it('every listed check is either made in this folder or stands in the list of those that are not, with the reason', () => {
+  const files = readdirSync(import.meta.dirname).filter((name) => name.endsWith('.test.ts'));
+  const texts = files
+    .filter((name) => name !== 'coverage.test.ts' && name !== 'closed-forms.test.ts')
+    .map((name) => readFileSync(join(import.meta.dirname, name), 'utf8'));
+  const text = texts.join('\n');
+  // Families are named by a pattern in the code: `rect-A-${a}` and `tri-iso-${apex}`.
+  const made = listedChecks.filter(({ id }) => {
+    const family = id.replace(/^(rect-A-|tri-iso-).*/, '$1${');
+    const whole = new RegExp(`(?<![\\w.-])${escaped(id)}(?![\\w.-])`);
+    return whole.test(text) || (family !== id && text.includes(family));
+  });
+  expect(texts.length).toBeGreaterThanOrEqual(8);
+  expect(listedChecks).toHaveLength(100);
+  const ids = made.map(({ id }) => id);
+  expect(ids.filter((id) => id in elsewhere)).toEqual([]);
+  expect(listedChecks.map(({ id }) => id).filter((id) => !ids.includes(id) && !(id in elsewhere))).toEqual(
+    [],
+  );
+  expect(ids.length + Object.keys(elsewhere).length).toBe(100);
+});
+
+function escaped(text: string): string {
+  return text.replace(/[.*+?^${}()|[\]\\]/g, '\\$&');
+}
