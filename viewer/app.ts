@@ -16,6 +16,12 @@ const PAGE_FAULT: Refusal = {
   remedy: 'Load the page again; if it happens twice, the page and the service are of different versions',
 };
 
+/** What a refusal may lead back to, and the text of the file it is about. */
+interface Ways {
+  readonly back?: () => void;
+  readonly text?: string;
+}
+
 const EMPTY_FORM: TakenForm = { drawingUnit: '', diffusion: '', length: '', time: '', catching: undefined };
 
 /** The page as a whole: which sheet is shown, what is asked of the service, what the title block says. */
@@ -115,14 +121,14 @@ export class App {
   }
 
   /** Waits for the service; hands the answer on if nothing else was asked meanwhile. */
-  #ask<T>(asked: Promise<T>, what: string, then: (answer: T) => void, back?: () => void): void {
+  #ask<T>(asked: Promise<T>, what: string, then: (answer: T) => void, ways: Ways = {}): void {
     const turn = this.#next();
     asked.then(
       (answer) => {
         if (turn === this.#turn) then(answer);
       },
       (error: unknown) => {
-        if (turn === this.#turn) this.#failed(error, what, back);
+        if (turn === this.#turn) this.#failed(error, what, ways);
       },
     );
   }
@@ -149,7 +155,13 @@ export class App {
       const files = Object.fromEntries(others.map((file) => [file.name, file.text]));
       const upload: CaseUpload = { case: theCase.text, ...(others.length > 0 ? { files } : {}) };
       this.#frame.solver(`Reading ${theCase.name} …`);
-      this.#ask(api.openCase(upload), theCase.name, (view) => this.#openCase(view, `opened ${theCase.name}`));
+      const refused = { text: theCase.text };
+      this.#ask(
+        api.openCase(upload),
+        theCase.name,
+        (view) => this.#openCase(view, `opened ${theCase.name}`),
+        refused,
+      );
     } else if (drawing !== undefined) {
       this.#frame.solver(`Reading ${drawing.name} …`);
       this.#ask(api.readDrawing(drawing.text, drawing.name), drawing.name, (view) =>
@@ -165,7 +177,9 @@ export class App {
     const back = () => this.#showTaken(file, drawing, form);
     const open = (upload: CaseUpload) => {
       this.#frame.solver('Reading the drawing as a case …');
-      this.#ask(api.openCase(upload), file.name, (view) => this.#openCase(view, `opened ${file.name}`), back);
+      this.#ask(api.openCase(upload), file.name, (view) => this.#openCase(view, `opened ${file.name}`), {
+        back,
+      });
     };
     this.#frame.show(
       'taken',
@@ -189,9 +203,9 @@ export class App {
     this.#open.solve();
   }
 
-  #failed(error: unknown, what: string, back?: () => void): void {
+  #failed(error: unknown, what: string, ways: Ways = {}): void {
     if (error instanceof ConnectionLost) this.#lost();
-    else this.#refuse(error instanceof Refused ? error.refusal : PAGE_FAULT, what, back);
+    else this.#refuse(error instanceof Refused ? error.refusal : PAGE_FAULT, what, ways);
   }
 
   /** What is shown stays; the page asks every two seconds until the service answers again. */
@@ -216,7 +230,7 @@ export class App {
     setTimeout(again, 2000);
   }
 
-  #refuse(refusal: Refusal, what: string, back?: () => void): void {
+  #refuse(refusal: Refusal, what: string, { back, text }: Ways = {}): void {
     this.#next();
     const open = this.#open;
     const other = open?.other;
@@ -226,7 +240,13 @@ export class App {
         ? empty
         : { words: `Back to ${other}`, act: () => open.chooseLayout(other) };
     const step = back === undefined ? toOther : { words: 'Back to the form', act: back };
-    const sheet = refusedSheet({ refusal, what, back: step, take: (files) => this.#takeFiles(files) });
+    const sheet = refusedSheet({
+      refusal,
+      what,
+      back: step,
+      take: (files) => this.#takeFiles(files),
+      ...(text === undefined ? {} : { text }),
+    });
     this.#frame.show('refused', ...sheet);
     this.#fill('Not solved.', {
       case: open?.case.title ?? 'not opened',

@@ -100,7 +100,7 @@ export class OpenCase {
     }
     this.#showBench('solving');
     this.#bench.solving(undefined);
-    this.#fill(`Solving ${this.#layout} …`, () => this.stop());
+    this.#fill(`Solving ${this.#layout} …`);
     api.solve(this.case.id, this.#layout).then(
       (job) => {
         if (!isCurrent(turn)) return;
@@ -197,13 +197,12 @@ export class OpenCase {
     writePlace({ case: this.case.id, layout: this.#layout, start: this.#start });
   }
 
-  #fill(solver: string, stop?: () => void): void {
+  #fill(solver: string): void {
     this.#host.fill(solver, {
       case: this.case.title,
       drawing: this.case.drawing,
       sheet: 'Bench',
       another: this.#host.another,
-      ...(stop === undefined ? {} : { stop }),
     });
   }
 }

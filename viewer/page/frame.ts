@@ -11,7 +11,6 @@ export interface TitleBlock {
   readonly lastChange: string;
   /** Sheets that exist for what is open. */
   readonly sheet?: string;
-  readonly stop?: () => void;
   readonly another?: () => void;
 }
 
@@ -52,7 +51,7 @@ export class Frame {
         ),
       );
     };
-    const { another, stop } = block;
+    const { another } = block;
     cell(
       'Case',
       'case',
@@ -61,14 +60,7 @@ export class Frame {
     );
     if (block.drawing !== undefined) cell('Drawing', 'drawing', block.drawing);
     if (block.file !== undefined) cell('File', 'drawing', block.file);
-    cell(
-      'Solver',
-      'solver',
-      el('span', { class: 'solver-words' }, block.solver),
-      stop === undefined
-        ? undefined
-        : button('Stop', stop, { class: 'plain link', 'aria-keyshortcuts': 'Escape' }),
-    );
+    cell('Solver', 'solver', el('span', { class: 'solver-words' }, block.solver));
     cell('Last change', 'change', block.lastChange);
     if (block.sheet !== undefined) {
       cells.push(

@@ -26,18 +26,16 @@ export function legend(scheme: Scheme, bands: Bands, unit: string, width: number
   );
   root.append(...boxes, svg('rect', { class: 'frame', x: 8, y: 0.5, width, height: 11 }));
   const heavy = bands.count / 4;
-  const every = [1, 2, 3, 4].find((n) => heavy % n === 0 && heavy / n <= 5) ?? heavy;
+  const every = Math.ceil(heavy / 5);
   for (let i = 0; i <= heavy; i++) {
     const x = 8 + 4 * i * each;
     root.append(svg('path', { class: 'frame', d: `M${x.toFixed(1)} 11v${i % every === 0 ? 5 : 3}` }));
     if (i % every !== 0) continue;
     const number = fixedText(4 * i * bands.step, stepDecimals(4 * bands.step));
-    const last = i === heavy && unit !== '';
-    const label = svg('text', { x: x.toFixed(1), y: 27, class: 'tick', 'text-anchor': 'middle' }, number);
-    root.append(label);
-    if (last) {
-      root.append(svg('text', { x: (x + number.length * 3.4 + 4).toFixed(1), y: 27, class: 'tick' }, unit));
-    }
+    root.append(svg('text', { x: x.toFixed(1), y: 27, class: 'tick', 'text-anchor': 'middle' }, number));
+    if (i + every <= heavy || unit === '') continue;
+    // The unit follows the last number.
+    root.append(svg('text', { x: (x + number.length * 3.4 + 4).toFixed(1), y: 27, class: 'tick' }, unit));
   }
   return root;
 }

@@ -101,6 +101,10 @@ export function pinMarks(
       const size = Math.hypot(edge[0] - at[0], edge[1] - at[1]) || 1;
       const from: Px = [at[0] + (9 * (edge[0] - at[0])) / size, at[1] + (9 * (edge[1] - at[1])) / size];
       const d = pathOf([from, edge]);
+      // Numbers of isolines keep off the leader.
+      for (const [x, y] of refined([from, edge], 10)) {
+        room.take({ left: x - 4, right: x + 4, top: y - 5, bottom: y + 5 });
+      }
       group.append(svg('path', { class: 'casing thin', d }), svg('path', { class: 'leader', d }));
       const anchor = side === 1 ? 'end' : 'start';
       const x = side === 1 ? middle[0] + width / 2 : middle[0] - width / 2;
@@ -193,6 +197,8 @@ export function wallNames(
     if (place !== undefined) group.append(text([place[0], place[1] + 4], 's = 0', { class: 'tick' }));
   }
   for (const stretch of catchingStretches(layout)) {
+    // Letters of posts would stand on the lifted surface and not on the post.
+    if (view.lift > 0 && stretch.post) continue;
     const shown = visibleRuns(stretch.wall.points, view, hidden).length > 0;
     if (!shown || stretch.wall.name === undefined) continue;
     group.append(...wallName(stretch, names.letter(stretch.wall.name), view, room));

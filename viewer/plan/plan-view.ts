@@ -4,7 +4,7 @@ import { wantsLightInk, washAt } from '../colour/ramp.ts';
 import { currentScheme, el, onScheme, svg, tokenColour } from '../page/dom.ts';
 import type { DisplayUnit } from '../words/display-unit.ts';
 import { type Bands, bandsFor, niceStep, stepDecimals } from '../words/nice-steps.ts';
-import { decimalsFor, fixedText, numberText, pointText, withUnit } from '../words/number-text.ts';
+import { fixedText, givenText, numberText, pointText, withUnit } from '../words/number-text.ts';
 import type { Field } from './field.ts';
 import { hiddenBy } from './hidden.ts';
 import { type Isoline, isolines } from './isolines.ts';
@@ -57,6 +57,7 @@ export class PlanView {
   #lit: number | undefined;
   #view: Projection | undefined;
   #due = 0;
+  #drawn: readonly [number, number] = [0, 0];
 
   constructor(data: PlanData) {
     this.#data = data;
@@ -110,7 +111,9 @@ export class PlanView {
   }
 
   #listen(stage: HTMLElement): void {
-    const sizes = new ResizeObserver(() => this.redraw());
+    const sizes = new ResizeObserver(() => {
+      if (stage.clientWidth !== this.#drawn[0] || stage.clientHeight !== this.#drawn[1]) this.redraw();
+    });
     sizes.observe(stage);
     this.#ends.push(
       () => sizes.disconnect(),
@@ -205,6 +208,13 @@ export class PlanView {
     this.redraw();
   }
 
+  /** Draws at once: when this returns, the picture is there. */
+  drawNow(): void {
+    cancelAnimationFrame(this.#due);
+    this.#due = 0;
+    this.#draw();
+  }
+
   /** Draws at the next frame. */
   redraw(): void {
     if (this.#due !== 0) return;
@@ -231,6 +241,7 @@ export class PlanView {
     const stage = this.#canvas.parentElement;
     if (stage === null || stage.clientWidth === 0) return;
     const size: [number, number] = [stage.clientWidth, stage.clientHeight];
+    this.#drawn = size;
     const lift = this.#slider.lift;
     const side = this.#data.pins.length > 0 ? Math.min(150, size[0] * 0.15) : 56;
     const room: Rect = {
@@ -259,9 +270,11 @@ export class PlanView {
   #write(view: Projection, size: readonly [number, number]): void {
     const { layout, pins, letter, time } = this.#data;
     const hidden = hiddenBy(this.#locator, view, this.#longest * view.rise);
-    const room = new LabelRoom({ left: 2, right: size[0] - 2, top: 2, bottom: size[1] - 26 });
+    const room = new LabelRoom({ left: 2, right: size[0] - 2, top: 2, bottom: size[1] - 2 });
     // The legend stands at the upper right.
     room.take({ left: size[0] - 350, right: size[0], top: 0, bottom: 40 });
+    room.take({ left: 0, right: 230, top: size[1] - 28, bottom: size[1] });
+    room.take({ left: size[0] - 230, right: size[0], top: size[1] - 28, bottom: size[1] });
     this.#overlay.setAttribute('viewBox', `0 0 ${size[0]} ${size[1]}`);
     const scheme = currentScheme();
     const lines = this.#heavy.map((line) => {
@@ -296,7 +309,6 @@ function scaleBar(scale: number, unit: string): Element[] {
 }
 
 function heightWords(bands: Bands, unit: string): Element {
-  const top = bands.step * bands.count;
-  const words = withUnit(fixedText(top, Math.min(decimalsFor(top), stepDecimals(bands.step))), unit);
+  const words = withUnit(givenText(bands.step * bands.count), unit);
   return el('span', {}, `Height is the mean time: the sheet is 0, the end of the scale ${words}.`);
 }

@@ -34,6 +34,7 @@ export class BenchSheet {
   readonly #letters: Letters;
   readonly #act: BenchActions;
   readonly #sentence = el('div', { class: 'sentence-place' });
+  /** Where the words about a running solve stand, over the plan: nothing moves when they come and go. */
   readonly #work = el('div', { class: 'work' });
   readonly #left = el('div', { class: 'bench-left' });
   readonly #right = el('div', { class: 'bench-right' });
@@ -46,7 +47,7 @@ export class BenchSheet {
     this.#case = theCase;
     this.#letters = letters;
     this.#act = act;
-    const main = el('div', { class: 'bench-main' }, this.#sentence, this.#line, this.#work, this.#left);
+    const main = el('div', { class: 'bench-main' }, this.#sentence, this.#work, this.#left);
     this.parts = [main, this.#right];
   }
 
@@ -85,23 +86,22 @@ export class BenchSheet {
     this.#right.classList.toggle('stale', this.#plan !== undefined);
     const part = Math.round(100 * Math.min(1, Math.max(0, job?.done ?? 0)));
     this.#line.style.setProperty('width', `${part}%`);
-    this.#line.hidden = false;
     const words = job === undefined ? 'asking for the answer' : job.doing;
     this.#work.hidden = false;
     const known = this.#work.querySelector('.work-words');
     if (known !== null) known.textContent = `${words}, ${part}\u00a0%`;
     else {
       this.#work.replaceChildren(
+        this.#line,
         el('span', { class: 'work-words' }, words),
         button('Stop', this.#act.stop, { class: 'quiet small' }),
-        el('span', { class: 'soft' }, el('kbd', {}, 'Esc'), ' stops too'),
+        el('kbd', {}, 'Esc'),
       );
     }
   }
 
   /** The solve was stopped before there was an answer. */
   stopped(words: string): void {
-    this.#line.hidden = true;
     this.#work.replaceChildren(
       el('span', { class: 'work-words' }, words),
       button('Solve it', this.#act.solve, { class: 'quiet small' }),
@@ -110,7 +110,6 @@ export class BenchSheet {
 
   /** Shows a solved layout. */
   show(solved: Solved, start: string): void {
-    this.#line.hidden = true;
     this.#work.hidden = true;
     this.#work.replaceChildren();
     this.#left.classList.remove('stale');
@@ -155,6 +154,8 @@ export class BenchSheet {
     });
     const twin = textTwin(words, catchingStretches(layout));
     this.#left.replaceChildren(this.#plan.element, this.#strip.element, twin);
+    this.#strip.drawNow();
+    this.#plan.drawNow();
     const hadFocus = this.#right.contains(document.activeElement);
     this.#right.replaceChildren(
       readings({
@@ -165,7 +166,7 @@ export class BenchSheet {
         time,
         letter,
         choose: this.#act.chooseStart,
-        width: Math.max(180, this.#right.clientWidth - 40),
+        width: Math.max(180, this.#right.clientWidth - 37),
       }),
     );
     if (hadFocus) this.#right.querySelector('button')?.focus();

@@ -29,7 +29,7 @@ export function stretchWords(data: BenchWords, stretch: Stretch): [string, strin
   const { wall, loop } = stretch;
   const name =
     wall.name === undefined ? `wall on ${loop.name}` : `${capital(wall.name)} (${data.letter(wall.name)})`;
-  const decimals = Math.max(2, decimalsFor(loop.length));
+  const decimals = decimalsFor(loop.length, 4);
   const whole = stretch.whole
     ? `the whole of ${loop.name}`
     : `${fixedText(wall.from, decimals)} to ${withUnit(fixedText(wall.to, decimals), data.lengthUnit)}`;

@@ -1,6 +1,6 @@
 import type { CaseUpload, DrawingView } from '../../src/service/contract.ts';
 import { el } from '../page/dom.ts';
-import { numberText, withUnit } from '../words/number-text.ts';
+import { givenText, numberText, withUnit } from '../words/number-text.ts';
 import { drawingPreview } from './drawing-preview.ts';
 import { fileButton, type GivenFile } from './file-place.ts';
 
@@ -109,7 +109,7 @@ export function takenSheet(data: TakenData): HTMLElement[] {
 
 function unitWords(text: string): string {
   const unit = unitOf(text);
-  return unit === undefined ? text : withUnit(numberText(Number.parseFloat(text), 4), unit);
+  return unit === undefined ? text : withUnit(givenText(Number.parseFloat(text)), unit);
 }
 
 function shapeRow(

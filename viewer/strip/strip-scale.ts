@@ -56,7 +56,7 @@ export function fluxCurve(wall: WallView): readonly (readonly [s: number, value:
 
 /**
  * Top of the scale for the share caught per length. The flux has no bound where a pad ends at wall that turns back,
- * so the scale reaches to twice the mean of the busiest stretch, and what is above is cut off.
+ * so the scale reaches to half as much again as the mean of the busiest stretch, and what is above is cut off.
  */
 export function fluxTop(walls: readonly WallView[]): { readonly top: number; readonly cut: boolean } {
   let mean = 0;
@@ -73,7 +73,7 @@ export function fluxTop(walls: readonly WallView[]): { readonly top: number; rea
     if (length > 0) mean = Math.max(mean, caught / length);
     for (const [, value] of curve) most = Math.max(most, value);
   }
-  const wanted = Math.min(most, 2 * mean);
+  const wanted = Math.min(most, 1.5 * mean);
   // An even number of steps, so that the middle of the scale is a nice number too.
   const step = 2 * niceStep(wanted, 4);
   const top = wanted > 0 ? step * Math.ceil(wanted / step - 1e-9) : 0;

@@ -2,7 +2,7 @@ import type { LayoutView, LoopView } from '../../src/service/contract.ts';
 import { button, el, svg } from '../page/dom.ts';
 import { chevronPath, chevrons, dotPlaces, GLYPH_SCALE, glyphSizes } from '../plan/glyphs.ts';
 import { type Px, pathOf } from '../plan/polyline.ts';
-import { catchingStretches, loopsByUse, type Stretch } from '../plan/stretches.ts';
+import { catchingStretches, loopsByUse, type Stretch, stretchLength } from '../plan/stretches.ts';
 import { niceStep, stepDecimals, ticksTo } from '../words/nice-steps.ts';
 import { fixedText, withUnit } from '../words/number-text.ts';
 import { glyphKey } from './glyph-key.ts';
@@ -52,6 +52,11 @@ export class StripView {
     this.#sizes.observe(this.#body);
   }
 
+  /** Draws at once, so that the height of the strip is known to what stands above it. */
+  drawNow(): void {
+    if (this.#body.clientWidth > 0) this.#draw();
+  }
+
   dispose(): void {
     this.#sizes.disconnect();
   }
@@ -64,11 +69,7 @@ export class StripView {
       line.append(this.#note);
       return line;
     }
-    const names = idle.map((loop) => loop.name);
-    const words =
-      names.length > 6
-        ? `Nothing is caught on ${names.length} posts and inner walls.`
-        : `Nothing is caught on ${names.length === 1 ? names[0] : `${names.slice(0, -1).join(', ')} and ${names.at(-1)}`}.`;
+    const words = `Nothing is caught on ${idleWords(idle)}.`;
     const toggle = button('Show their walls', () => {
       this.#all = !this.#all;
       toggle.textContent = this.#all ? 'Hide their walls' : 'Show their walls';
@@ -120,7 +121,7 @@ export class StripView {
       item.style.setProperty('height', `${(parts[row] as HTMLElement | undefined)?.offsetHeight ?? 24}px`);
     }
     this.#note.textContent = flux.cut
-      ? 'Peaks at the ends of pads are cut off: the share caught per length has no bound there.'
+      ? 'Peaks at pad ends are cut off: the share per length has no bound there.'
       : '';
   }
 
@@ -202,8 +203,14 @@ export class StripView {
   }
 
   #curve(stretch: Stretch, at: { left: number; base: number; scale: number; top: number }): SVGElement[] {
-    const curve = fluxCurve(stretch.wall);
-    if (curve.length === 0 || at.top <= 0) return [];
+    const inner = fluxCurve(stretch.wall);
+    const [begin, finish] = [inner[0], inner.at(-1)];
+    if (begin === undefined || finish === undefined || at.top <= 0) return [];
+    const curve = [
+      [0, begin[1]] as const,
+      ...inner,
+      [stretchLength(stretch.wall, stretch.loop), finish[1]] as const,
+    ];
     const high = CURVE - 14;
     const { loop, wall } = stretch;
     const place = ([s, value]: readonly [number, number]): Px => {
@@ -288,6 +295,20 @@ export class StripView {
   }
 }
 
+/** 'oval post and baffle'; more than three are counted by their kind. */
+function idleWords(idle: readonly LoopView[]): string {
+  const names = idle.map((loop) => loop.name);
+  if (names.length > 3) {
+    const walls = idle.filter((loop) => loop.role === 'inner wall').length;
+    const posts = names.length - walls;
+    const count = (n: number, what: string) => (n === 0 ? '' : n === 1 ? `1 ${what}` : `${n} ${what}s`);
+    const parts = [count(posts, 'post'), count(walls, 'inner wall')];
+    return parts.filter((part) => part !== '').join(' and ');
+  }
+  const last = names.at(-1) ?? '';
+  return names.length === 1 ? last : `${names.slice(0, -1).join(', ')} and ${last}`;
+}
+
 function fluxAxis(base: number, top: number): SVGElement {
   const high = CURVE - 14;
   const group = svg('g', { class: 'flux-axis' });
@@ -298,7 +319,7 @@ function fluxAxis(base: number, top: number): SVGElement {
       svg(
         'text',
         { class: 'tick', x: LEFT - 9, y: y + 4, 'text-anchor': 'end' },
-        fixedText(part * top, stepDecimals(top / 2)),
+        part === 0 ? '0' : fixedText(part * top, stepDecimals(top / 2)),
       ),
     );
   }
