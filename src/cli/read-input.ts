@@ -58,7 +58,7 @@ function inside(folder: string, name: string): string {
 
 function missing(name: string, cause: unknown): CaseError {
   return new CaseError(
-    'FILE_NOT_FOUND',
+    'FILE_NOT_READ',
     `there is no file "${name}" that can be read`,
     { file: name },
     'Check the path, and that the file may be read',
@@ -78,7 +78,7 @@ function readText(source: string | 0, name: string, largest: number, what: strin
   if (bytes.length > largest) throw tooLarge(name, undefined, largest, what);
   if (bytes.includes(0)) {
     throw new CaseError(
-      'NOT_TEXT',
+      'FILE_NOT_TEXT',
       `this ${what} is not text: byte ${bytes.indexOf(0) + 1} is zero`,
       { file: name },
       `Give a ${what} in UTF-8 text`,
@@ -88,7 +88,7 @@ function readText(source: string | 0, name: string, largest: number, what: strin
     return new TextDecoder('utf-8', { fatal: true }).decode(bytes);
   } catch (cause) {
     throw new CaseError(
-      'NOT_TEXT',
+      'FILE_NOT_TEXT',
       `this ${what} is not UTF-8 text`,
       { file: name },
       'Save it as UTF-8',
@@ -102,7 +102,7 @@ function readOpened(path: string, name: string, largest: number, what: string): 
   try {
     const facts = fstatSync(handle);
     if (facts.isDirectory()) {
-      throw new CaseError('NOT_A_FILE', `"${name}" is a folder`, { file: name }, `Name a ${what} in it`);
+      throw new CaseError('FILE_NOT_READ', `"${name}" is a folder`, { file: name }, `Name a ${what} in it`);
     }
     if (facts.size > largest) throw tooLarge(name, facts.size, largest, what);
     return facts.isFile() ? readFileSync(handle) : readUpTo(handle, largest + 1);
@@ -142,7 +142,7 @@ function readSome(handle: number, part: Buffer): number {
 function tooLarge(name: string, size: number | undefined, largest: number, what: string): CaseError {
   const has = size === undefined ? `is larger than ${largest / 1e6} MB` : `has ${(size / 1e6).toFixed(1)} MB`;
   return new CaseError(
-    'FILE_TOO_LARGE',
+    largest === largestCase ? 'CASE_TOO_LARGE' : 'DRAWING_TOO_LARGE',
     `this ${what} ${has}; at most ${largest / 1e6} MB are read`,
     { file: name },
     'Leave out what is not part of the compartment',
