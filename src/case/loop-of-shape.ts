@@ -1,4 +1,5 @@
 import { type Chain, type Curve, enclosedArea, type Point, partOf, reversed } from '../../mesher/index.ts';
+import { boxOf } from '../importers/found-shape.ts';
 import { nearestOn, placeAt, rulerOf } from './arc-length.ts';
 
 /** How a shape becomes a loop or an inner wall of a drawing. */
@@ -44,23 +45,28 @@ interface ClosedUp {
 }
 
 /**
- * Ends within the tolerance are made one point, silently: a path that returns to its first point before Z is
- * ordinary, up to rounding. Others are joined by the straight line with which SVG paints an open path.
+ * Ends apart by rounding are made one point, silently: a path that returns to its first point before Z is ordinary.
+ * Gaps up to the tolerance are left to healing, which reports them; others are joined by the straight line with which
+ * SVG paints an open path.
  */
 function closedUp(curves: readonly Curve[], tolerance: number): ClosedUp {
   const first = curves[0];
   const last = curves.at(-1);
   if (!first || !last) return { curves };
+  const [low, high] = boxOf(curves);
+  const rounding = 1e-12 * apart(low, high);
   const gap = apart(last.to, first.from);
   const before = curves.at(-2);
-  if (gap === 0 && last.kind === 'line' && before && before.to !== first.from) {
+  if (gap === 0 && last.kind === 'line' && before) {
     const short = apart(last.from, last.to);
-    // The closing line of Z after a point that repeats the first up to rounding. One of length 0 is left to healing.
-    if (short > 0 && short <= tolerance)
+    // The closing line of Z after a point that repeats the first up to rounding; one of length 0 was drawn as a point.
+    if (short > 0 && short <= rounding) {
       return { curves: [...curves.slice(0, -2), { ...before, to: first.from }] };
+    }
   }
   if (gap === 0) return { curves };
-  if (gap <= tolerance) return { curves: [...curves.slice(0, -1), { ...last, to: first.from }] };
+  if (gap <= rounding) return { curves: [...curves.slice(0, -1), { ...last, to: first.from }] };
+  if (gap <= tolerance) return { curves };
   return {
     curves: [...curves, { kind: 'line', from: last.to, to: first.from }],
     closing: { what: 'closed with a straight line', at: last.to },

@@ -91,17 +91,17 @@ export function turnedUp(curve: Curve, height = 0): Curve {
   return mapCurve([1, 0, 0, -1, 0, height], curve);
 }
 
-const oneTransform = /^\s*,?\s*([a-zA-Z]+)\s*\(([^()]*)\)/;
+const oneTransform = /^([a-zA-Z]+)\s*\(([^()]*)\)[\s,]*/;
 
 /** Reads an SVG `transform` attribute (SVG 1.1, 7.6); undefined where it cannot be read. */
 export function readTransform(text: string): Matrix | undefined {
-  let rest = text;
+  let rest = text.trim();
   let result = identity;
-  while (rest.trim() !== '') {
+  while (rest !== '') {
     const match = oneTransform.exec(rest);
     if (!match) return undefined;
     const written = (match[2] ?? '').trim();
-    const values = written === '' ? [] : written.split(/\s*,\s*|\s+/).map(Number);
+    const values = written === '' ? [] : written.split(/[\s,]+/).map(Number);
     if (!values.every(Number.isFinite)) return undefined;
     const matrix = elementary(match[1] ?? '', values);
     if (!matrix) return undefined;

@@ -54,9 +54,13 @@ const containers = new Set(['g', 'a', 'switch']);
 /** Elements that say something about the drawing and are not part of it. */
 const silent = new Set(['title', 'desc', 'metadata', 'defs', 'script']);
 
+/** More is no drawing of a compartment, and telling which shape lies in which would take long. */
+const mostShapes = 20_000;
+
 class Walk {
   readonly shapes: FoundShape[] = [];
-  private readonly names = new Set<string>();
+  /** Names given out, with the number the next twin would get. */
+  private readonly names = new Map<string, number>();
   /** Lines of elements not taken, by what they are. */
   private readonly skipped = new Map<string, number[]>();
   private readonly file: string;
@@ -72,7 +76,7 @@ class Walk {
       if (containers.has(tag)) this.into(element, this.inheritedBy(element, inherited, true));
       else if (shapeElements.has(tag))
         this.take(element, tag as DrawnElement, this.inheritedBy(element, inherited, false));
-      else this.skip(`<${tag}>`, element.line);
+      else this.skip(tag === 'style' ? 'style sheet; only attributes are read' : `<${tag}>`, element.line);
     }
   }
 
@@ -90,6 +94,14 @@ class Walk {
     }
     const strokes = strokesOf(element, tag, this.file).filter((stroke) => stroke.curves.length > 0);
     if (strokes.length === 0) this.skip(`<${tag}> without size`, element.line);
+    if (this.shapes.length + strokes.length > mostShapes) {
+      throw new CaseError(
+        'DRAWING_TOO_LARGE',
+        `${this.file} has more than ${mostShapes} shapes`,
+        { file: this.file, line: element.line },
+        'Save only the layer that shows the compartment',
+      );
+    }
     for (const stroke of strokes) {
       const curves = stroke.curves.map((curve) => mapCurve(own.matrix, curve));
       const position = `shape ${this.shapes.length + 1}`;
@@ -126,13 +138,17 @@ class Walk {
 
   private uniqueName(wanted: string): string {
     let name = wanted;
-    for (let n = 2; this.names.has(name); n++) name = `${wanted} ${n}`;
-    this.names.add(name);
+    let next = this.names.get(wanted) ?? 1;
+    while (this.names.has(name)) name = `${wanted} ${++next}`;
+    this.names.set(wanted, next);
+    if (name !== wanted) this.names.set(name, 1);
     return name;
   }
 
   private skip(what: string, line: number): void {
-    this.skipped.set(what, [...(this.skipped.get(what) ?? []), line]);
+    const lines = this.skipped.get(what);
+    if (lines) lines.push(line);
+    else this.skipped.set(what, [line]);
   }
 
   private refused(element: XmlElement, what: string): CaseError {

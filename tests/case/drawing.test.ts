@@ -96,6 +96,9 @@ it('closes gaps up to the tolerance and tells where', () => {
   const outline = { path: 'M 0 0 H 4 V 4 H 0 V 0.001' };
   const loose = build({ y: 'up', outline, tolerance: 0.01 });
   expect(loose.outline.pieces).toHaveLength(4);
+  expect(loose.healed).toEqual([{ what: 'gap closed', loop: 'outline', at: [0, 0] }]);
+  const rounded = build({ y: 'up', outline: { path: 'M 0 0 H 4 V 4 H 0 V 1e-13' }, tolerance: 0.01 });
+  expect([rounded.outline.pieces.length, rounded.healed]).toEqual([4, []]);
   const tight = build({ y: 'up', outline });
   expect(tight.outline.pieces).toHaveLength(5);
 });

@@ -167,3 +167,15 @@ it('refuses files that are not sound, declare entities or are too large, in word
   const deep = `<svg>${'<g>'.repeat(80)}<circle r="1"/>${'</g>'.repeat(80)}</svg>`;
   expect(refusal(() => readDrawing(deep, 'b.svg')).what).toContain('deeper');
 });
+
+it('refuses a drawing with more shapes than a compartment can have', () => {
+  const many = '<circle r="1"/>'.repeat(20_001);
+  expect(refusal(() => svg(many))).toMatchObject({ code: 'DRAWING_TOO_LARGE', where: { line: 2 } });
+});
+
+it('gives twins numbers that no other shape has', () => {
+  const { shapes } = svg(
+    '<circle id="a" r="1"/><circle id="a 2" r="1"/><circle id="a" r="1"/><circle id="a" r="1"/>',
+  );
+  expect(shapes.map(({ name }) => name)).toEqual(['a', 'a 2', 'a 3', 'a 4']);
+});
