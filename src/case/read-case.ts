@@ -4,7 +4,7 @@ import type { Case, CaseUnits } from './case.ts';
 import { type CaseContext, type CaseSource, caseContext, failIn } from './case-context.ts';
 import { buildDrawing } from './drawing.ts';
 import { CaseError } from './errors.ts';
-import { explainMismatch } from './explain-mismatch.ts';
+import { explainMismatch, type Mismatch } from './explain-mismatch.ts';
 import type { FigureNames } from './figures.ts';
 import { joinKey } from './key-path.ts';
 import { suggestName } from './nearest-name.ts';
@@ -43,15 +43,23 @@ export function readCase(text: string, source: CaseSource = {}): Case {
   }
   const { value, lineOf } = parseJson(text, source.file);
   const fail = failIn(source.file, lineOf);
-  const mismatch = Value.Check(caseSchema, value) ? undefined : explainMismatch(caseSchema, value);
-  if (mismatch !== undefined) fail(mismatch.code, mismatch.what, mismatch.key, mismatch.remedy);
-  if (!isCase(value))
-    return fail('CASE_VALUE_WRONG', 'this is not a case', '', 'Check it against the schema of a case');
+  if (!isCase(value)) {
+    const { code, what, key, remedy } = explainMismatch(caseSchema, value) ?? unexplained;
+    return fail(code, what, key, remedy);
+  }
   const units: CaseUnits = readUnits(value.units, (of, what, remedy) =>
     fail('UNIT_WRONG', what, joinKey('units', of), remedy),
   );
   return new CaseReading(value, source, caseContext(units, fail, source)).read();
 }
+
+/** Said if ever the check refuses what the words find in order; a test holds the two together. */
+const unexplained: Mismatch = {
+  code: 'CASE_VALUE_WRONG',
+  what: 'this does not fit the form of a case',
+  key: '',
+  remedy: 'Check it against the schema of a case',
+};
 
 /** The schema's own check, as a type: it decides, and `explainMismatch` finds the words. */
 const isCase = (value: unknown): value is RawCase => Value.Check(caseSchema, value);
