@@ -1,3 +1,4 @@
+export { conductance } from './answers/conductance.ts';
 export { type ExitDensity, exitDensity } from './answers/exit-density.ts';
 export { exitShares, lostShare } from './answers/exit-shares.ts';
 export { valueFromStart } from './answers/fields.ts';
@@ -8,7 +9,13 @@ export { type SolverCode, SolverError, type SolverWhere } from './errors.ts';
 export type { Csr } from './linear/csr.ts';
 export { type IterationOptions, iterationDefaults, type Solution } from './linear/iteration.ts';
 export { type FactorOptions, factorDefaults } from './linear/multifrontal.ts';
-export { type Prepared, prepare, solveAdjointOrThrow, solveOrThrow } from './linear/prepare.ts';
+export {
+  type Prepared,
+  prepare,
+  solveAdjointOrThrow,
+  solveManyOrThrow,
+  solveOrThrow,
+} from './linear/prepare.ts';
 export { assemble } from './operator/assemble.ts';
 export type { Cycle } from './operator/reversibility.ts';
 export type { Sinks, System } from './operator/system.ts';

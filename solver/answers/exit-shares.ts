@@ -1,5 +1,5 @@
 import type { Hooks } from '../../mesher/index.ts';
-import { solveOrThrow } from '../linear/prepare.ts';
+import { solveManyOrThrow } from '../linear/prepare.ts';
 import type { System } from '../operator/system.ts';
 import { overAllNodes } from './fields.ts';
 
@@ -14,9 +14,7 @@ import { overAllNodes } from './fields.ts';
  * Source: METHODS 3; Redner 2001 (splitting probabilities, recalled).
  */
 export function exitShares(system: System, hooks: Hooks = {}): Float64Array[] {
-  const fields: Float64Array[] = [];
-  for (let e = 0; e < system.exitCount; e++) fields.push(shareOf(system, e, hooks));
-  return fields;
+  return sharesOf(system, [...Array(system.exitCount).keys()], hooks);
 }
 
 /**
@@ -26,16 +24,22 @@ export function exitShares(system: System, hooks: Hooks = {}): Float64Array[] {
  * @throws {SolverError} NOT_CONVERGED, SOLVING_STOPPED
  */
 export function lostShare(system: System, hooks: Hooks = {}): Float64Array {
-  return shareOf(system, -1, hooks);
+  return sharesOf(system, [-1], hooks)[0];
 }
 
-function shareOf(system: System, through: number, hooks: Hooks): Float64Array {
+function sharesOf(system: System, exits: readonly number[], hooks: Hooks): Float64Array[] {
   const { row, exit, rate } = system.sinks;
-  const rhs = new Float64Array(system.size);
-  for (let s = 0; s < row.length; s++) if (exit[s] === through) rhs[row[s]] += rate[s];
-  const field = overAllNodes(system, solveOrThrow(system, rhs, hooks));
   const wall = system.absorbing;
-  for (let q = 0; q < wall.node.length; q++)
-    if (wall.exit[q] === through) field[wall.node[q]] += wall.part[q];
-  return field;
+  const rates = exits.map((through) => {
+    const rhs = new Float64Array(system.size);
+    for (let s = 0; s < row.length; s++) if (exit[s] === through) rhs[row[s]] += rate[s];
+    return rhs;
+  });
+  return solveManyOrThrow(system, rates, hooks).map((free, e) => {
+    const field = overAllNodes(system, free);
+    for (let q = 0; q < wall.node.length; q++) {
+      if (wall.exit[q] === exits[e]) field[wall.node[q]] += wall.part[q];
+    }
+    return field;
+  });
 }

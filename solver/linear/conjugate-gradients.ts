@@ -20,8 +20,8 @@ export function conjugateGradients(
   const tolerance = options.tolerance ?? iterationDefaults.tolerance;
   const limit = options.maxIterations ?? iterationDefaults.maxIterations;
   const n = b.length;
-  const x = b.slice();
-  precondition(x);
+  const x = options.from ?? b.slice();
+  if (!options.from) precondition(x);
   const r = new Float64Array(n);
   const q = new Float64Array(n);
   let residual = backwardError(a, x, b, r);

@@ -22,8 +22,8 @@ export function gmres(
 ): Solution {
   const tolerance = options.tolerance ?? iterationDefaults.tolerance;
   const limit = options.maxIterations ?? iterationDefaults.maxIterations;
-  const x = b.slice();
-  precondition(x);
+  const x = options.from ?? b.slice();
+  if (!options.from) precondition(x);
   const r = new Float64Array(b.length);
   let residual = backwardError(a, x, b, r);
   let iterations = 0;

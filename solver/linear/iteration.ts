@@ -13,6 +13,8 @@ export interface IterationOptions {
   /** Backward error ‖r‖/(‖A‖‖x‖+‖b‖) wanted. */
   readonly tolerance?: number;
   readonly maxIterations?: number;
+  /** Where to begin, in place of P⁻¹b; overwritten. */
+  readonly from?: Float64Array;
 }
 
 export const iterationDefaults = { tolerance: 1e-13, maxIterations: 500 } as const;

@@ -50,6 +50,7 @@ export function factorize(fronts: Fronts, input: FactorInput, options: FactorOpt
   const waiting = new Float64Array(fronts.waiting);
   const waitingLower = symmetric ? waiting : new Float64Array(fronts.waiting);
   const localOf = new Int32Array(fronts.size);
+  const childLocal = new Int32Array(fronts.largest);
   const children = childrenOf(fronts.parent);
   const between = poll(options);
   let top = 0;
@@ -69,8 +70,9 @@ export function factorize(fronts: Fronts, input: FactorInput, options: FactorOpt
       const begin = borderStart[child];
       const childWidth = borderStart[child + 1] - begin;
       top -= (childWidth * (childWidth + 1)) / 2;
-      addWaiting(work, order, waiting, top, border, begin, childWidth, localOf);
-      if (!symmetric) addWaiting(workLower, order, waitingLower, top, border, begin, childWidth, localOf);
+      for (let p = 0; p < childWidth; p++) childLocal[p] = localOf[border[begin + p]];
+      addWaiting(work, order, waiting, top, childWidth, childLocal);
+      if (!symmetric) addWaiting(workLower, order, waitingLower, top, childWidth, childLocal);
     }
     eliminate(workLower, work, order, pivots, inversePivot, first, between);
     storeColumns(upper, factorStart[t], work, order, pivots);
@@ -154,21 +156,23 @@ function loadBackRates(
   }
 }
 
-/** Adds a child's remaining rates (packed columns, each ending with its rate to the exit) into its parent's front. */
+/**
+ * Adds a child's remaining rates (packed columns, each ending with its rate to the exit) into its parent's front.
+ *
+ * @param local the child's border in the parent's numbering
+ */
 function addWaiting(
   work: Float64Array,
   order: number,
   waiting: Float64Array,
   from: number,
-  border: Int32Array,
-  begin: number,
   width: number,
-  localOf: Int32Array,
+  local: Int32Array,
 ): void {
   let at = from;
   for (let j = 0; j < width; j++) {
-    const base = localOf[border[begin + j]] * order;
-    for (let k = j + 1; k < width; k++) work[base + localOf[border[begin + k]]] += waiting[at++];
+    const base = local[j] * order;
+    for (let k = j + 1; k < width; k++) work[base + local[k]] += waiting[at++];
     work[base + order - 1] += waiting[at++];
   }
 }

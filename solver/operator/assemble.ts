@@ -56,7 +56,7 @@ export function assemble(given: Mesh, problem: Problem, hooks: Hooks = {}): Syst
     : symmetricLinks(edges, weights, bridges, psi);
   const rowScale = psi && !plain ? psi.map(Math.exp) : undefined;
   stopIfAsked(hooks);
-  const free = numberFreeNodes(nodeBefore.length, absorbing);
+  const free = numberFreeNodes(mesh, absorbing);
   const sinks = collectSinks({ links, absorbing, partly, volume, rowScale }, free.freeOf);
   const load = Float64Array.from(free.nodeOf, (node) => mass[node] * (rowScale ? rowScale[node] : 1));
   const matrix = matrixOf(links, free, sinks);
@@ -91,14 +91,15 @@ interface FreeNodes {
   readonly freeOf: Int32Array;
 }
 
-function numberFreeNodes(nodeCount: number, absorbing: AbsorbingNodes): FreeNodes {
-  const freeOf = new Int32Array(nodeCount);
-  const nodeOf = new Int32Array(nodeCount - absorbing.size);
+/** Every node of a triangle that is not on an absorbing wall gets a row. */
+function numberFreeNodes(mesh: Mesh, absorbing: AbsorbingNodes): FreeNodes {
+  const freeOf = new Int32Array(mesh.nodes.length / 2).fill(-1);
+  for (let p = 0; p < mesh.triangles.length; p++) freeOf[mesh.triangles[p]] = 0;
+  for (const node of absorbing.keys()) freeOf[node] = -1;
   let size = 0;
-  for (let node = 0; node < nodeCount; node++) {
-    freeOf[node] = absorbing.has(node) ? -1 : size;
-    if (freeOf[node] >= 0) nodeOf[size++] = node;
-  }
+  for (let node = 0; node < freeOf.length; node++) if (freeOf[node] === 0) freeOf[node] = size++;
+  const nodeOf = new Int32Array(size);
+  for (let node = 0; node < freeOf.length; node++) if (freeOf[node] >= 0) nodeOf[freeOf[node]] = node;
   return { nodeOf, freeOf };
 }
 
