@@ -48,7 +48,11 @@ export function fillCavity(
     from[e + 1] = cavity.to[i];
     from[e + 2] = v;
     opposite[e] = o;
-    if (o >= 0) opposite[o] = e;
+    if (o >= 0) {
+      opposite[o] = e;
+      // Only differs where a wall vertex lies beyond its old chord, which then is a wall no longer.
+      segment[o] = s;
+    }
     segment[e] = s;
     segment[e + 1] = -1;
     segment[e + 2] = -1;

@@ -7,7 +7,7 @@ import type { HalfEdgeMesh } from './half-edge.ts';
 import { makeSound } from './heal.ts';
 import type { Mesh } from './mesh.ts';
 import type { MeshOptions } from './options.ts';
-import { refine } from './refine.ts';
+import { refineFully } from './refine-fully.ts';
 import { makeSizeField } from './size-field.ts';
 
 /** Values used where the options leave them open; lengths relative to the diameter of the drawing. */
@@ -32,9 +32,10 @@ export function meshDomain(domain: Domain, options: MeshOptions = {}): Mesh {
   const maxNodes = options.maxNodes ?? meshDefaults.maxNodes;
   const corners = findSharpCorners(mesh);
   const expected = requireFeasible(mesh, size, corners, maxNodes) / 2;
-  refine(mesh, {
+  const minAngle = options.minAngle ?? meshDefaults.minAngle;
+  refineFully(mesh, {
     size,
-    minAngle: options.minAngle ?? meshDefaults.minAngle,
+    minAngle,
     maxVertices: maxNodes,
     expected,
     corners,

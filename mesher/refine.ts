@@ -19,6 +19,8 @@ export interface RefineGoal extends Hooks {
   /** For the progress told: about how many vertices there will be. */
   readonly expected: number;
   readonly corners: readonly SharpCorner[];
+  /** Per vertex of the first triangulation: pieces longer than this may be halved at a sharp corner come what may. */
+  readonly granted: Float64Array;
 }
 
 /**
@@ -148,46 +150,57 @@ class Refinement {
     const p = 2 * from[e];
     const q = 2 * from[next(e)];
     const r = 2 * from[previous(e)];
-    const kept = state === badAngle ? this.#keptSegments(e) : undefined;
-    if (kept === 'leave') return;
+    const { segment } = mesh;
+    if (state === badAngle && segment[next(e)] >= 0 && segment[previous(e)] >= 0) return;
     const dx = xy[q] - xy[p];
     const dy = xy[q + 1] - xy[p + 1];
     const ex = xy[r] - xy[p];
     const ey = xy[r + 1] - xy[p + 1];
     const dd = dx * dx + dy * dy;
     const ee = ex * ex + ey * ey;
-    const scale = 0.5 / (dx * ey - dy * ex);
-    let ox = (ey * dd - dy * ee) * scale;
-    let oy = (dx * ee - ex * dd) * scale;
-    const fx = 0.5 * dx - this.#offCentre * dy;
-    const fy = 0.5 * dy + this.#offCentre * dx;
-    if (fx * fx + fy * fy < ox * ox + oy * oy) {
-      ox = fx;
-      oy = fy;
+    // Height of the circumcentre over the shortest edge, per its length; the off-centre is lower in thin triangles.
+    const circumcentre = (ee - dx * ex - dy * ey) / (2 * (dx * ey - dy * ex));
+    let height = Math.min(circumcentre, this.#offCentre);
+    while (this.#place(t, xy[p] + 0.5 * dx - height * dy, xy[p + 1] + 0.5 * dy + height * dx, state, dd)) {
+      // Nearer to the edge, where the triangle over it still gets better; never nearer than its ends are.
+      height *= 0.8;
+      if (height < 0.87) return;
     }
-    const x = xy[p] + ox;
-    const y = xy[p + 1] + oy;
-    if (!Number.isFinite(x + y) || (x === xy[p] && y === xy[p + 1])) return;
+  }
+
+  /**
+   * Inserts a point for triangle `t`, or splits the segments it would come near.
+   *
+   * @param square length of the triangle's shortest edge, squared
+   * @returns true when the point is no use because pieces of a sharp corner that may not be split stand too near
+   */
+  #place(t: number, x: number, y: number, state: number, square: number): boolean {
+    const mesh = this.#mesh;
+    if (!Number.isFinite(x + y)) return false;
     const cavity = this.#cavity;
     cavity.collect(mesh, t, x, y);
     const hit = this.#hit;
     hit.length = 0;
     const star = cavity.look(mesh, x, y, hit);
     if (hit.length > 0) {
-      if (kept?.some((s) => hit.includes(s))) return;
       let queued = false;
-      for (const s of hit) queued = this.#walls.request(s) || queued;
-      if (!queued) return;
+      let kept = false;
+      for (const s of hit) {
+        if (state === badAngle && this.#walls.wouldShorten(s, square)) kept = true;
+        else queued = this.#walls.request(s) || queued;
+      }
+      if (!queued) return kept;
       this.#walls.flush();
       // The slot may hold another triangle by now; whatever it holds is looked at again.
       this.#grade(t);
-      return;
+      return false;
     }
-    if (!star) return;
+    if (!star) return false;
     const v = mesh.addVertex(x, y);
     fillCavity(mesh, cavity, v, true, mesh.regionSet[t], this.#walls.segmentEdge, this.#fan);
     this.#walls.inspect(this.#fan);
     this.#gradeFan(this.#fan);
+    return false;
   }
 
   #shortestEdge(t: number): number {
@@ -206,20 +219,6 @@ class Refinement {
       }
     }
     return best;
-  }
-
-  /**
-   * What may not be split for the sake of the triangle over its shortest edge `e`: 'leave' when that edge spans the
-   * corner it looks at; the two walls of the corner on the other side of `e` when that one is sharper than the goal.
-   */
-  #keptSegments(e: number): 'leave' | number[] | undefined {
-    const { segment, opposite } = this.#mesh;
-    if (segment[next(e)] >= 0 && segment[previous(e)] >= 0) return 'leave';
-    const o = opposite[e];
-    if (o < 0 || segment[e] >= 0) return undefined;
-    const s = segment[next(o)];
-    const r = segment[previous(o)];
-    return s >= 0 && r >= 0 && this.#quality((o / 3) | 0) & badAngle ? [s, r] : undefined;
   }
 
   #gradeFan(fan: Fan): void {

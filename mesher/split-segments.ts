@@ -23,6 +23,8 @@ export class SegmentSplitter {
   readonly #queue = new IntQueue();
   /** Per vertex of the first triangulation: shell unit of a sharp corner, else 0. */
   readonly #reach: Float64Array;
+  /** Per vertex of the first triangulation: sine of half the angle of a corner sharper than the goal, else 0. */
+  readonly #halfSine: Float64Array;
   /** Per segment: a half-edge on it. */
   segmentEdge = new Int32Array(64);
   /** Per segment: 1 while it waits in the queue, 2 when the numbers leave no room to split it. */
@@ -37,7 +39,14 @@ export class SegmentSplitter {
     this.#poll = poll;
     this.#reach = new Float64Array(mesh.vertexCount);
     this.#checkAt = 10_000 + 4 * mesh.vertexCount;
-    for (const { vertex, reach } of goal.corners) this.#reach[vertex] = reach;
+    this.#halfSine = new Float64Array(mesh.vertexCount);
+    for (const { vertex, reach, angle } of goal.corners) {
+      this.#reach[vertex] = reach;
+      if (angle >= (goal.minAngle * Math.PI) / 180) continue;
+      const known = this.#halfSine[vertex];
+      const sine = Math.max(1e-9, Math.sin(angle / 2));
+      this.#halfSine[vertex] = known === 0 ? sine : Math.min(known, sine);
+    }
     this.#fit();
     for (let e = 0; e < 3 * mesh.triangleCount; e++) {
       if (mesh.segment[e] >= 0) this.segmentEdge[mesh.segment[e]] = e;
@@ -79,6 +88,29 @@ export class SegmentSplitter {
     this.#state[s] = 1;
     this.#queue.push(s);
     return true;
+  }
+
+  /**
+   * True when splitting `s` for a triangle's angle would only make shorter edges than the triangle has: the pieces
+   * that end in a corner sharper than the goal would be halved for ever, because each halving brings the next shell's
+   * ends as near to each other as the corner is sharp (the rule of Shewchuk 2002, section 6, recalled).
+   *
+   * @param square length of the triangle's shortest edge, squared
+   */
+  wouldShorten(s: number, square: number): boolean {
+    const { xy, segmentFrom, segmentTo } = this.#mesh;
+    const a = segmentFrom[s];
+    const b = segmentTo[s];
+    const atA = a < this.#halfSine.length && this.#halfSine[a] > 0;
+    const atB = b < this.#halfSine.length && this.#halfSine[b] > 0;
+    if (!atA && !atB) return false;
+    const sine = Math.max(atA ? this.#halfSine[a] : 0, atB ? this.#halfSine[b] : 0);
+    const { granted } = this.#goal;
+    const floor = Math.max(atA ? granted[a] : 0, atB ? granted[b] : 0);
+    const dx = xy[2 * a] - xy[2 * b];
+    const dy = xy[2 * a + 1] - xy[2 * b + 1];
+    const length = dx * dx + dy * dy;
+    return length <= floor * floor && square >= length * sine * sine;
   }
 
   /** Splits everything on the queue and whatever that makes necessary. */
