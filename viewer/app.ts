@@ -3,10 +3,11 @@ import { api, ConnectionLost, type Refusal, Refused } from './api.ts';
 import { type Host, OpenCase } from './open-case.ts';
 import { Frame, type TitleBlock } from './page/frame.ts';
 import { readPlace, writePlace } from './page/place.ts';
+import { proposedForm, type TakenForm } from './sheets/drawn-case.ts';
 import { emptySheet } from './sheets/empty-sheet.ts';
 import { type GivenFile, readFiles, takeDrops } from './sheets/file-place.ts';
 import { refusedSheet } from './sheets/refused-sheet.ts';
-import { type TakenForm, takenSheet } from './sheets/taken-sheet.ts';
+import { takenSheet } from './sheets/taken-sheet.ts';
 
 /** What is said when an answer has not the form that the contract promises. */
 const PAGE_FAULT: Refusal = {
@@ -21,8 +22,6 @@ interface Ways {
   readonly back?: () => void;
   readonly text?: string;
 }
-
-const EMPTY_FORM: TakenForm = { drawingUnit: '', diffusion: '', length: '', time: '', catching: undefined };
 
 /** The page as a whole: which sheet is shown, what is asked of the service, what the title block says. */
 export class App {
@@ -165,7 +164,7 @@ export class App {
     } else if (drawing !== undefined) {
       this.#frame.solver(`Reading ${drawing.name} …`);
       this.#ask(api.readDrawing(drawing.text, drawing.name), drawing.name, (view) =>
-        this.#showTaken(drawing, view, { ...EMPTY_FORM }),
+        this.#showTaken(drawing, view, proposedForm(view)),
       );
     }
   }
@@ -186,7 +185,7 @@ export class App {
       ...takenSheet({ file, drawing, form, open, take: (files) => this.#takeFiles(files) }),
     );
     this.#lastChange = `read ${file.name}`;
-    this.#fill('Waiting for you: what catches.', {
+    this.#fill('Waiting for you: what each shape is, and what catches.', {
       case: 'not opened yet',
       file: file.name,
       another: () => this.#showEmpty(),

@@ -79,6 +79,9 @@ describe('the page in a real browser', () => {
     }, text);
     await page.dispatchEvent('body', 'drop', { dataTransfer: transfer });
     await stateOf(page, 'taken');
+    // The largest closed shape is the frame of the sheet, not the compartment: say so.
+    await page.getByRole('group', { name: 'rim' }).getByLabel('outline', { exact: true }).check();
+    await page.getByRole('group', { name: 'bay' }).getByLabel('region').check();
     await page.getByLabel('It diffuses with D =').fill('1e-4 mm^2/s');
     await page.getByLabel('the whole outline catches').check();
     await page.getByRole('button', { name: 'Take it so' }).click();

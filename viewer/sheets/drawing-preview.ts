@@ -1,4 +1,5 @@
 import { svg } from '../page/dom.ts';
+import type { Role } from './drawn-case.ts';
 
 /**
  * Shows a dropped drawing in the lines of the page. The file is only read as data: shapes are made anew from a few
@@ -54,21 +55,32 @@ function copy(
   }
 }
 
+export interface DrawingPreview {
+  readonly element: SVGSVGElement;
+  /** Draws each shape as what it is taken for. */
+  readonly show: (roles: readonly Role[]) => void;
+}
+
 /** An SVG of the drawing with the numbers of the shapes found by name. Fits itself once it is on the page. */
-export function drawingPreview(text: string, names: readonly string[]): SVGSVGElement {
+export function drawingPreview(text: string, names: readonly string[]): DrawingPreview {
   const root = svg('svg', {
     class: 'drawing-preview',
     role: 'img',
     'aria-label': 'The drawing as it was read',
   });
-  const file = new DOMParser().parseFromString(text, 'image/svg+xml');
-  if (file.querySelector('parsererror') !== null) return root;
   const named = new Map<string, SVGGeometryElement>();
+  const show = (roles: readonly Role[]) => {
+    names.forEach((name, i) => {
+      named.get(name)?.setAttribute('class', `found found-${(roles[i] ?? 'left out').replace(' ', '-')}`);
+    });
+  };
+  const file = new DOMParser().parseFromString(text, 'image/svg+xml');
+  if (file.querySelector('parsererror') !== null) return { element: root, show };
   const lines = svg('g');
   root.append(lines);
   copy(file.documentElement, lines, { left: MOST_SHAPES }, named);
   requestAnimationFrame(() => fitAndNumber(root, lines, names, named));
-  return root;
+  return { element: root, show };
 }
 
 function fitAndNumber(

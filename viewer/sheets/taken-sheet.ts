@@ -2,17 +2,8 @@ import type { CaseUpload, DrawingView } from '../../src/service/contract.ts';
 import { el } from '../page/dom.ts';
 import { givenText, numberText, withUnit } from '../words/number-text.ts';
 import { drawingPreview } from './drawing-preview.ts';
+import { isWall, rolesFor, setRole, type TakenForm, unitOf, uploadOf } from './drawn-case.ts';
 import { fileButton, type GivenFile } from './file-place.ts';
-
-/** What the user typed, kept when the form is shown again after a refusal. */
-export interface TakenForm {
-  drawingUnit: string;
-  diffusion: string;
-  length: string;
-  time: string;
-  /** Names of loops that catch; undefined until the user chose. */
-  catching: string[] | undefined;
-}
 
 export interface TakenData {
   readonly file: GivenFile;
@@ -22,68 +13,31 @@ export interface TakenData {
   readonly take: (files: readonly File[]) => void;
 }
 
-const COUNTS = [
-  'No',
-  'One',
-  'Two',
-  'Three',
-  'Four',
-  'Five',
-  'Six',
-  'Seven',
-  'Eight',
-  'Nine',
-  'Ten',
-  'Eleven',
-  'Twelve',
-];
+const COUNTS = 'No One Two Three Four Five Six Seven Eight Nine Ten Eleven Twelve'.split(' ');
 
-/** '1 mm' gives 'mm'; the unit that the case is then written in. */
-export function unitOf(text: string): string | undefined {
-  return /^\s*[0-9.eE+-]+\s*([a-zµμ]+)\s*$/u.exec(text)?.[1];
-}
-
-/** The form of a dropped drawing: what was found, how long a unit is, D, and what catches. */
+/** The form of a dropped drawing: what each shape is, how long a unit is, D, and what catches. */
 export function takenSheet(data: TakenData): HTMLElement[] {
-  const { drawing, form } = data;
+  const { drawing, form, file } = data;
   const n = drawing.shapes.length;
   const found = `${COUNTS[n] ?? String(n)} ${n === 1 ? 'shape' : 'shapes'} found.`;
+  const unit = drawing.drawingUnit === undefined ? ', how long one unit is' : '';
   const asked =
-    drawing.drawingUnit === undefined ? 'Say how long one unit is, and what catches.' : 'Say what catches.';
-  const sentence = el(
-    'h1',
-    { class: 'sentence large' },
-    `${found} ${n === 0 ? 'There is nothing to solve in it.' : asked}`,
-  );
+    n === 0 ? 'There is nothing to solve in it.' : `Say what each one is${unit} and what catches.`;
   const list = el('ol', { class: 'shapes' });
-  const boxes: HTMLInputElement[] = [];
-  list.append(...drawing.shapes.map((shape, i) => shapeRow(shape, i + 1, form, boxes)));
-  const fields = el('div', { class: 'fields' });
-  if (drawing.drawingUnit === undefined) {
-    fields.append(
-      field('One drawing unit is', 'such as 1 mm or 0.5 µm', form.drawingUnit, (text) => {
-        form.drawingUnit = text;
-      }),
-    );
-  } else {
-    fields.append(
-      el(
-        'p',
-        { class: 'soft' },
-        `The drawing says that one of its units is ${unitWords(drawing.drawingUnit)}.`,
-      ),
-    );
-  }
-  fields.append(
-    field('It diffuses with D =', 'such as 1e-4 mm^2/s', form.diffusion, (text) => {
-      form.diffusion = text;
-    }),
+  const preview = drawingPreview(
+    file.text,
+    drawing.shapes.map((shape) => shape.name),
   );
+  const draw = () => {
+    list.replaceChildren(...drawing.shapes.map((_, i) => shapeRow(data, i, draw)));
+    preview.show(form.roles);
+  };
+  draw();
   const problem = el('p', { class: 'form-problem', role: 'alert' });
   const act = el('form', { class: 'taken-form', novalidate: true });
   act.append(
-    el('fieldset', {}, el('legend', {}, 'Shapes found'), list),
-    fields,
+    el('div', {}, el('h2', {}, 'Shapes found'), list),
+    fields(data),
     problem,
     el(
       'p',
@@ -91,57 +45,80 @@ export function takenSheet(data: TakenData): HTMLElement[] {
       el('button', { type: 'submit', class: 'strong' }, 'Take it so'),
       fileButton('Choose another file', data.take, false),
     ),
+    el(
+      'p',
+      { class: 'soft' },
+      'A region names an area for release. An inner wall is thin and has two sides. What is left out stays in the file and plays no part.',
+    ),
     ...notes(drawing.notes),
   );
   act.addEventListener('submit', (event) => {
     event.preventDefault();
-    form.catching = boxes.filter((box) => box.checked).map((box) => box.value);
-    const upload = uploadOf(data);
+    const upload = uploadOf(file, drawing, form);
     if (typeof upload === 'string') problem.textContent = upload;
     else data.open(upload);
   });
-  const preview = drawingPreview(
-    data.file.text,
-    drawing.shapes.map((shape) => shape.name),
+  return [
+    el('h1', { class: 'sentence large' }, `${found} ${asked}`),
+    el('div', { class: 'taken-columns' }, el('div', { class: 'preview' }, preview.element), act),
+  ];
+}
+
+function shapeRow({ drawing, form }: TakenData, index: number, changed: () => void): HTMLElement {
+  const shape = drawing.shapes[index];
+  if (shape === undefined) return el('li');
+  const role = form.roles[index] ?? 'left out';
+  const size = `${shape.closed ? 'closed' : 'open'}, ${numberText(shape.size[0])} × ${numberText(shape.size[1])} units`;
+  const choices = rolesFor(shape).map((one) => {
+    const radio = el('input', { type: 'radio', name: `role-${index}`, value: one });
+    radio.checked = one === role;
+    radio.addEventListener('change', () => {
+      setRole(form, index, one);
+      changed();
+      document.querySelector<HTMLElement>(`input[name="role-${index}"]:checked`)?.focus();
+    });
+    return el('label', {}, radio, el('span', {}, one));
+  });
+  const row = el(
+    'li',
+    { role: 'group', 'aria-label': shape.name },
+    el('b', { class: 'shape-number' }, String(index + 1)),
+    el('span', { class: 'shape-name' }, shape.name),
+    el('span', { class: 'soft' }, size),
+    el('div', { class: 'roles', role: 'radiogroup', 'aria-label': `What ${shape.name} is` }, ...choices),
   );
-  return [sentence, el('div', { class: 'taken-columns' }, el('div', { class: 'preview' }, preview), act)];
+  if (!isWall(role)) return row;
+  const box = el('input', { type: 'checkbox' });
+  box.checked = form.catches[index] ?? false;
+  box.addEventListener('change', () => {
+    form.catches[index] = box.checked;
+  });
+  row.append(
+    el('label', { class: 'catches' }, box, role === 'outline' ? 'the whole outline catches' : 'catches'),
+  );
+  return row;
+}
+
+function fields({ drawing, form }: TakenData): HTMLElement {
+  const unit =
+    drawing.drawingUnit === undefined
+      ? field('One drawing unit is', 'such as 1 mm or 0.5 µm', form.drawingUnit, (text) => {
+          form.drawingUnit = text;
+        })
+      : el(
+          'p',
+          { class: 'soft' },
+          `The drawing says that one of its units is ${unitWords(drawing.drawingUnit)}.`,
+        );
+  const diffusion = field('It diffuses with D =', 'such as 1e-4 mm^2/s', form.diffusion, (text) => {
+    form.diffusion = text;
+  });
+  return el('div', { class: 'fields' }, unit, diffusion);
 }
 
 function unitWords(text: string): string {
   const unit = unitOf(text);
   return unit === undefined ? text : withUnit(givenText(Number.parseFloat(text)), unit);
-}
-
-function shapeRow(
-  shape: DrawingView['shapes'][number],
-  number: number,
-  form: TakenForm,
-  boxes: HTMLInputElement[],
-): HTMLElement {
-  const size = `${shape.closed ? 'closed' : 'open'}, ${numberText(shape.size[0])} × ${numberText(shape.size[1])} units`;
-  const row = el(
-    'li',
-    {},
-    el('b', { class: 'shape-number' }, String(number)),
-    el('span', { class: 'shape-name' }, shape.name),
-    el('span', { class: 'shape-role' }, shape.role ?? 'left out'),
-    el('span', { class: 'soft' }, size),
-  );
-  if (shape.role === undefined) return row;
-  // The outline answers to this name whatever the file calls it.
-  const loop = shape.role === 'outline' ? 'outline' : shape.name;
-  const box = el('input', { type: 'checkbox', value: loop });
-  box.checked = form.catching?.includes(loop) ?? false;
-  boxes.push(box);
-  row.append(
-    el(
-      'label',
-      { class: 'catches' },
-      box,
-      shape.role === 'outline' ? 'the whole outline catches' : 'catches',
-    ),
-  );
-  return row;
 }
 
 function field(label: string, hint: string, value: string, changed: (text: string) => void): HTMLElement {
@@ -160,26 +137,4 @@ function notes(lines: readonly string[]): HTMLElement[] {
   if (lines.length === 0) return [];
   const items = lines.map((line) => el('li', {}, line));
   return [el('div', { class: 'notes' }, el('h2', {}, 'About the drawing'), el('ul', {}, ...items))];
-}
-
-/** What is sent, or what is still missing, in words. */
-export function uploadOf(data: Pick<TakenData, 'file' | 'drawing' | 'form'>): CaseUpload | string {
-  const { file, drawing, form } = data;
-  const catching = form.catching ?? [];
-  const unitText = drawing.drawingUnit ?? form.drawingUnit.trim();
-  const length = unitOf(unitText);
-  if (length === undefined) return 'Say how long one drawing unit is, with its unit: for example 1 mm.';
-  if (form.diffusion.trim() === '')
-    return 'Say with which D it diffuses, with its unit: for example 1e-4 mm^2/s.';
-  if (catching.length === 0)
-    return 'Nothing catches it yet: the time would be endless. Mark at least one wall.';
-  return {
-    svg: file.text,
-    name: file.name,
-    ...(drawing.drawingUnit === undefined ? { drawingUnit: unitText } : {}),
-    length: form.length === '' ? length : form.length,
-    time: form.time === '' ? 's' : form.time,
-    diffusion: form.diffusion.trim(),
-    catching,
-  };
 }
