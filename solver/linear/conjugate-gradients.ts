@@ -15,47 +15,78 @@ export function conjugateGradients(
   a: LinearOperator,
   b: Float64Array,
   precondition: (y: Float64Array) => void,
-  options: IterationOptions & Hooks = {},
+  options: IterationOptions & Hooks & EnergyOption = {},
 ): Solution {
   const tolerance = options.tolerance ?? iterationDefaults.tolerance;
   const limit = options.maxIterations ?? iterationDefaults.maxIterations;
-  const n = b.length;
   const x = options.from ?? b.slice();
   if (!options.from) precondition(x);
-  const r = new Float64Array(n);
-  const q = new Float64Array(n);
-  let residual = backwardError(a, x, b, r);
-  let iterations = 0;
-  let lowest = residual;
-  // Restarted from the true residual: once, and again whenever the recurrence claims an end it has not reached.
-  while (!(residual <= tolerance) && iterations < limit) {
-    const z = r.slice();
-    precondition(z);
-    const p = z.slice();
-    let rz = dot(r, z);
-    const goal = rz * (tolerance / Math.max(residual, tolerance)) ** 2;
-    while (rz > goal && iterations < limit) {
-      stopIfAsked(options);
-      applyOperator(a, p, q);
-      const step = rz / dot(p, q);
-      if (!Number.isFinite(step)) return { converged: false, residual, iterations };
-      for (let i = 0; i < n; i++) {
-        x[i] += step * p[i];
-        r[i] -= step * q[i];
-      }
-      iterations++;
-      z.set(r);
-      precondition(z);
-      const next = dot(r, z);
-      const beta = next / rz;
-      for (let i = 0; i < n; i++) p[i] = z[i] + beta * p[i];
-      rz = next;
-    }
+  const r = new Float64Array(b.length);
+  const z = new Float64Array(b.length);
+  /** Error ÷ what is allowed; leaves b − A x in r. */
+  const measure = (): number => {
     residual = backwardError(a, x, b, r);
-    if (!(residual < 0.5 * lowest)) break;
-    lowest = residual;
+    if (options.energyTolerance === undefined) return residual / tolerance;
+    z.set(r);
+    precondition(z);
+    const energy = Math.sqrt(Math.abs(dot(r, z) / dot(x, b))) || 0;
+    return Math.max(residual / tolerance, energy / options.energyTolerance);
+  };
+  let residual = 0;
+  let error = measure();
+  let iterations = 0;
+  // Restarted from the true residual whenever the recurrence claims an end it has not reached.
+  while (!(error <= 1) && iterations < limit) {
+    const before = error;
+    iterations += descend(a, x, r, z, precondition, Math.min(1, 1 / error), limit - iterations, options);
+    error = measure();
+    if (!(error < 0.5 * before)) break;
   }
-  return residual <= tolerance
+  return error <= 1
     ? { converged: true, x, residual, iterations }
     : { converged: false, residual, iterations };
+}
+
+/** For a preconditioner that is not exact: error in the energy norm, relative, as r·P⁻¹r ÷ x·b shows it. */
+export interface EnergyOption {
+  readonly energyTolerance?: number;
+}
+
+/** Steps until r·P⁻¹r has fallen by `reduction` squared; updates x and r, returns their number. */
+function descend(
+  a: LinearOperator,
+  x: Float64Array,
+  r: Float64Array,
+  z: Float64Array,
+  precondition: (y: Float64Array) => void,
+  reduction: number,
+  most: number,
+  hooks: Hooks,
+): number {
+  const n = x.length;
+  const q = new Float64Array(n);
+  z.set(r);
+  precondition(z);
+  const p = z.slice();
+  let rz = dot(r, z);
+  const goal = rz * reduction * reduction;
+  let steps = 0;
+  while (rz > goal && steps < most) {
+    stopIfAsked(hooks);
+    applyOperator(a, p, q);
+    const step = rz / dot(p, q);
+    if (!Number.isFinite(step)) break;
+    for (let i = 0; i < n; i++) {
+      x[i] += step * p[i];
+      r[i] -= step * q[i];
+    }
+    steps++;
+    z.set(r);
+    precondition(z);
+    const next = dot(r, z);
+    const beta = next / rz;
+    for (let i = 0; i < n; i++) p[i] = z[i] + beta * p[i];
+    rz = next;
+  }
+  return steps;
 }

@@ -4,43 +4,56 @@ import type { System } from '../operator/system.ts';
 import { conjugateGradients } from './conjugate-gradients.ts';
 import { dissect } from './dissection.ts';
 import { solveWithFactor } from './factor-solve.ts';
-import { planFronts } from './fronts.ts';
+import { bytesNeeded, type Fronts, planFronts } from './fronts.ts';
 import { gmres } from './gmres.ts';
 import type { IterationOptions, Solution } from './iteration.ts';
-import { type Factor, type FactorOptions, factorize } from './multifrontal.ts';
+import { type Factor, type FactorOptions, factorDefaults, factorize } from './multifrontal.ts';
+import { buildMultigrid } from './multigrid/multigrid.ts';
 import { stopIfAsked } from './stopping.ts';
 
-/** A system with its factor, ready for any number of right-hand sides. */
+/** Which preconditioner: the factor unless its memory is above the limit and multigrid can stand in. */
+export type Preconditioner = 'factor' | 'multigrid';
+
+/** How a system is prepared; defaults in {@link factorDefaults}. */
+export interface PrepareOptions extends FactorOptions, Hooks {
+  /** Overrides the choice. Multigrid is for symmetric rates without drift. */
+  readonly preconditioner?: Preconditioner;
+}
+
+/** A system with its preconditioner, ready for any number of right-hand sides. */
 export interface Prepared {
   readonly system: System;
+  readonly preconditioner: Preconditioner;
   /** A x = rhs, one entry per free node; a statement of failure instead of a half-true field. */
   readonly solve: (rhs: Float64Array, options?: IterationOptions & Hooks) => Solution;
   /** The same for many right-hand sides, taken through the factor in blocks. */
   readonly solveMany: (rhs: readonly Float64Array[], options?: IterationOptions & Hooks) => Solution[];
   /** Aᵀ x = rhs. */
   readonly solveAdjoint: (rhs: Float64Array, options?: IterationOptions & Hooks) => Solution;
-  /** x ← A⁻¹ x by the factor alone, in place: `width` right-hand sides, side r of row i at x[i·width + r]. */
-  readonly precondition: (x: Float64Array, width?: number) => void;
-  /** Bytes held by the factor. */
+  /** Bytes held by the preconditioner. */
   readonly bytes: number;
 }
+
+/** The backward error alone accepts noise where pivots range widely (ENGINE.md); the energy norm does not. */
+const energyTolerance = 1e-10;
 
 const prepared = new WeakMap<System, Prepared>();
 
 /**
- * Orders and factors a system once; later calls with the same system get the same factor.
+ * Orders and factors a system once (or builds its multigrid); later calls with the same system get the same.
  *
  * @throws {SolverError} MEMORY_LIMIT, SOLVING_STOPPED
  */
-export function prepare(system: System, options: FactorOptions & Hooks = {}): Prepared {
+export function prepare(system: System, options: PrepareOptions = {}): Prepared {
   const known = prepared.get(system);
-  if (known) return known;
+  if (known && (!options.preconditioner || known.preconditioner === options.preconditioner)) return known;
   const made = prepareAnew(system, options);
   prepared.set(system, made);
   return made;
 }
 
-function prepareAnew(system: System, options: FactorOptions & Hooks): Prepared {
+function prepareAnew(system: System, options: PrepareOptions): Prepared {
+  if (options.preconditioner === 'multigrid') return withMultigrid(system, options);
   const { nodes } = system.mesh;
   const xy = new Float64Array(2 * system.size);
   for (let i = 0; i < system.size; i++) {
@@ -51,6 +64,12 @@ function prepareAnew(system: System, options: FactorOptions & Hooks): Prepared {
   stopIfAsked(options);
   const fronts = planFronts(system.rates, dissection);
   stopIfAsked(options);
+  const tooLarge = bytesNeeded(fronts) > (options.maxBytes ?? factorDefaults.maxBytes);
+  const mayTurn = options.preconditioner !== 'factor' && system.symmetric && !system.psi;
+  return tooLarge && mayTurn ? withMultigrid(system, options) : withFactor(system, fronts, options);
+}
+
+function withFactor(system: System, fronts: Fronts, options: PrepareOptions): Prepared {
   const factor = factorize(fronts, system, options);
   const iterate = system.symmetric ? conjugateGradients : gmres;
   const solve =
@@ -58,15 +77,30 @@ function prepareAnew(system: System, options: FactorOptions & Hooks): Prepared {
     (rhs: Float64Array, watched: IterationOptions & Hooks = {}) =>
       iterate({ ...system, transposed }, rhs, (y) => solveWithFactor(factor, y, 1, transposed), watched);
   return {
-    system,
-    solve: solve(false),
+    ...{ system, preconditioner: 'factor', solve: solve(false), solveAdjoint: solve(!system.symmetric) },
     solveMany: (rhs, watched = {}) => {
       const starts = throughFactor(factor, rhs, watched);
       return rhs.map((b, r) => solve(false)(b, { ...watched, from: starts[r] }));
     },
-    solveAdjoint: solve(!system.symmetric),
-    precondition: (x, width = 1) => solveWithFactor(factor, x, width, false),
     bytes: factor.upper.byteLength * (system.symmetric ? 1 : 2) + factor.inversePivot.byteLength,
+  };
+}
+
+function withMultigrid(system: System, options: PrepareOptions): Prepared {
+  if (!system.symmetric || system.psi) {
+    throw new SolverError(
+      'MEMORY_LIMIT',
+      'Multigrid was asked for, and it does not converge with drift',
+      {},
+      'Leave the choice of the preconditioner open.',
+    );
+  }
+  const { precondition, bytes } = buildMultigrid(system, options);
+  const solve = (rhs: Float64Array, watched: IterationOptions & Hooks = {}) =>
+    conjugateGradients(system, rhs, precondition, { ...watched, energyTolerance });
+  return {
+    ...{ system, preconditioner: 'multigrid', solve, solveAdjoint: solve, bytes },
+    solveMany: (rhs, watched = {}) => rhs.map((b) => solve(b, watched)),
   };
 }
 

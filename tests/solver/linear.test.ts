@@ -75,3 +75,61 @@ it('stagnation is a statement with its residual, never a field', () => {
   expect(solution.residual).toBeGreaterThan(0);
   expect(solution).not.toHaveProperty('x');
 });
+
+describe('multigrid', () => {
+  const mesh = rectangleMesh({ x: [0, 1], y: [0, 1], columns: 90, rows: 90 });
+  const media = problem(
+    varying((x) => Math.exp(4 * x)),
+    [absorbing(), reflecting, partly(0.2, 1), reflecting],
+  );
+
+  it('ends where the factor does, in at most 30 steps', () => {
+    const system = assemble(mesh, media);
+    const exact = prepare(system, { preconditioner: 'factor' }).solve(system.load);
+    const prepared = prepare(system, { preconditioner: 'multigrid' });
+    const found = prepared.solve(system.load);
+    if (!exact.converged || !found.converged) throw new Error('not converged');
+    expect(prepared.preconditioner).toBe('multigrid');
+    expect(found.iterations).toBeGreaterThan(3);
+    expect(found.iterations).toBeLessThan(30);
+    found.x.forEach((value, i) => {
+      expect(Math.abs(value / (exact.x[i] ?? Number.NaN) - 1)).toBeLessThan(1e-8);
+    });
+  });
+
+  it('stands in where the factor would take more memory than allowed', () => {
+    const system = assemble(mesh, media);
+    expect(prepare(system, { maxBytes: 1e6 }).preconditioner).toBe('multigrid');
+    const asked = assemble(mesh, media);
+    expect(() => prepare(asked, { maxBytes: 1e6, preconditioner: 'factor' })).toThrow(
+      expect.objectContaining({ code: 'MEMORY_LIMIT' }),
+    );
+    expect(prepare(assemble(mesh, media)).preconditioner).toBe('factor');
+  });
+
+  it('is not used with drift: the limit is said instead', () => {
+    const drift = { kind: 'components', x: constant(30), y: constant(0) } as const;
+    const system = assemble(mesh, { ...media, media: [{ diffusion: constant(1), drift }] });
+    expect(() => prepare(system, { maxBytes: 1e6 })).toThrow(/GB/);
+    expect(() => prepare(system, { preconditioner: 'multigrid' })).toThrow(/drift/);
+  });
+});
+
+it('many right-hand sides through the factor at once are what each is alone', () => {
+  const mesh = discMesh({ radius: 1, rings: 9 });
+  const spin = { kind: 'components', x: varying((_, y) => -9 * y), y: varying((x) => 9 * x) } as const;
+  for (const drift of [undefined, spin]) {
+    const medium = { diffusion: constant(1), ...(drift ? { drift } : {}) };
+    const system = assemble(mesh, { ...problem(constant(1), [absorbing()]), media: [medium] });
+    const prepared = prepare(system);
+    const sides = [...Array(11).keys()].map((r) => system.load.map((v, i) => v * Math.cos(r * i)));
+    const all = prepared.solveMany(sides);
+    sides.forEach((rhs, r) => {
+      const [one, block] = [prepared.solve(rhs), all[r]];
+      if (!one.converged || !block?.converged) throw new Error('not converged');
+      one.x.forEach((value, i) => {
+        expect(block.x[i]).toBeCloseTo(value, 14);
+      });
+    });
+  }
+});
