@@ -1,9 +1,8 @@
 // `npm test`: installs what is missing, gets a browser, builds, lints, type-checks and runs every test.
 import { spawnSync } from 'node:child_process';
 import { existsSync } from 'node:fs';
-import { join } from 'node:path';
 import process from 'node:process';
-import { build, installIfNeeded, root, run } from '../src/cli/install.mjs';
+import { buildPage, compile, installIfNeeded, runInstalled } from '../src/cli/install.mjs';
 
 /** A Chromium for the browser tests: one that is there, else Debian's where this is root, else the packaged one. */
 function getBrowser() {
@@ -21,7 +20,7 @@ function getBrowser() {
 
 installIfNeeded();
 getBrowser();
-build();
-const bin = (name) => join(root, 'node_modules', '.bin', name);
-run(bin('biome'), ['ci', '.', '--diagnostic-level=error']);
-run(bin('vitest'), ['run', '--config', 'tests/vitest.config.ts', ...process.argv.slice(2)]);
+compile();
+buildPage();
+runInstalled('biome', ['ci', '.', '--diagnostic-level=error']);
+runInstalled('vitest', ['run', '--config', 'tests/vitest.config.ts', ...process.argv.slice(2)]);

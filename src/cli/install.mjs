@@ -39,11 +39,20 @@ export function installIfNeeded() {
   writeFileSync(stamp, lockHash());
 }
 
-/** Compiles the program and the page; quick when nothing changed. */
-export function build() {
-  const bin = (name) => join(root, 'node_modules', '.bin', name);
-  run(bin('tsc'), ['-b'], { stdio: ['ignore', 2, 2] });
-  run(bin('vite'), ['build', '--config', 'viewer/vite.config.ts', '--logLevel', 'warn'], {
-    stdio: ['ignore', 2, 2],
-  });
+const bin = (name) => join(root, 'node_modules', '.bin', name);
+const onlyMessages = { stdio: ['ignore', 2, 2] };
+
+/** Compiles one project and those it builds on, or all; quick when nothing changed. */
+export function compile(project = '.') {
+  run(bin('tsc'), ['-b', project], onlyMessages);
+}
+
+/** Builds the page into dist/page. */
+export function buildPage() {
+  run(bin('vite'), ['build', '--config', 'viewer/vite.config.ts', '--logLevel', 'error'], onlyMessages);
+}
+
+/** Runs a program that an installed package brings. */
+export function runInstalled(name, args) {
+  run(bin(name), args);
 }

@@ -2,12 +2,13 @@
 import { join } from 'node:path';
 import process from 'node:process';
 import { pathToFileURL } from 'node:url';
-import { build, installIfNeeded, root } from './install.mjs';
-
-installIfNeeded();
-build();
+import { buildPage, compile, installIfNeeded, root } from './install.mjs';
 
 const serve = !process.argv.includes('--no-serve');
+installIfNeeded();
+compile('viewer');
+if (serve) buildPage();
+
 const { main } = await import(pathToFileURL(join(root, 'dist/src/cli/main.js')).href);
 const status = await main(['solve', join(root, 'meshes/capture-chamber.case.json')]);
 process.exitCode = status;
