@@ -173,7 +173,7 @@ it('the graphics card and the overlay put a point at the same px, nearer points 
     [0, 0, 0],
     [1, 0.2, 0.1],
     [0.4, 0.9, 0.3],
-  ] as const) {
+  ] as [number, number, number][]) {
     const [cx = 0, cy = 0] = clip(...point);
     const [px, py] = view.at(...point);
     expect(((cx + 1) / 2) * SIZE[0]).toBeCloseTo(px, 3);

@@ -4,7 +4,7 @@ import type { Projection } from './projection.ts';
 /** Tells whether the lifted surface stands between a point and the eye; what is hidden is not drawn over it. */
 export type Hidden = (x: number, y: number, height: number) => boolean;
 
-const STEPS = 90;
+const STEPS = 72;
 
 /**
  * @param top height of the highest point of the surface, length units
@@ -17,6 +17,7 @@ export function hiddenBy(locator: Locator, view: Projection, top: number): Hidde
     // The first step is short: a wall at the back is covered by the surface right beside it.
     for (let step = 0.35; step <= STEPS; step++) {
       const t = (step * reach) / STEPS;
+      if (!locator.inBox(x + t * ex, y + t * ey)) return false;
       const value = locator.valueAt(x + t * ex, y + t * ey);
       if (value * view.rise > height + t * ez + 0.004 * top) return true;
     }

@@ -4,6 +4,8 @@ import type { Field } from './field.ts';
 export class Locator {
   readonly #field: Field;
   readonly #low: readonly [number, number];
+  /** Width and height of the box. */
+  readonly #high: readonly [number, number];
   readonly #cell: number;
   readonly #columns: number;
   readonly #rows: number;
@@ -21,6 +23,7 @@ export class Locator {
       y1 = Math.max(y1, nodes[i + 1] ?? 0);
     }
     this.#low = [x0, y0];
+    this.#high = [x1 - x0, y1 - y0];
     const area = Math.max((x1 - x0) * (y1 - y0), Number.MIN_VALUE);
     // About two triangles per cell; a thin drawing must not ask for millions of cells.
     this.#cell = Math.max(
@@ -59,6 +62,13 @@ export class Locator {
         for (let i = i0; i <= Math.min(i1, this.#columns - 1); i++) visit(j * this.#columns + i, t);
       }
     }
+  }
+
+  /** Whether a point lies in the box around the mesh. A straight way that has left the box never comes back. */
+  inBox(x: number, y: number): boolean {
+    const slack = 1e-9 * this.#cell * Math.max(this.#columns, this.#rows);
+    const [dx, dy] = [x - this.#low[0], y - this.#low[1]];
+    return dx >= -slack && dy >= -slack && dx <= this.#high[0] + slack && dy <= this.#high[1] + slack;
   }
 
   /** The value at a point, in the case's time unit; NaN outside the mesh. */

@@ -7,7 +7,7 @@ import type { Locator } from './locate.ts';
 import { lengthsAlong, type Px, pathOf, placesAt, refined } from './polyline.ts';
 import type { Projection, Rect } from './projection.ts';
 import { catchingStretches, type Stretch } from './stretches.ts';
-import { outwardPx, visibleRuns } from './wall-overlay.ts';
+import { outwardPx } from './wall-overlay.ts';
 
 /** Everything written on the plan: release, pins with their readings, names of walls, numbers of isolines. */
 
@@ -199,8 +199,8 @@ export function wallNames(
   for (const stretch of catchingStretches(layout)) {
     // Letters of posts would stand on the lifted surface and not on the post.
     if (view.lift > 0 && stretch.post) continue;
-    const shown = visibleRuns(stretch.wall.points, view, hidden).length > 0;
-    if (!shown || stretch.wall.name === undefined) continue;
+    const middle = stretch.wall.points[stretch.wall.points.length >> 1];
+    if (middle === undefined || stretch.wall.name === undefined || hidden(middle[0], middle[1], 0)) continue;
     group.append(...wallName(stretch, names.letter(stretch.wall.name), view, room));
   }
   return group;

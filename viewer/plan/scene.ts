@@ -32,6 +32,7 @@ export class PlanScene {
   readonly #hanging: { readonly material: ShaderMaterial; readonly object: LineSegments | Mesh }[] = [];
   readonly #curtain: ShaderMaterial;
   readonly #bands: Bands;
+  #sized = '';
 
   /**
    * @param bands step in the case's time unit
@@ -98,8 +99,13 @@ export class PlanScene {
 
   /** Draws one frame. `size` in px of the page, `pixels` device px per px. */
   draw(view: Projection, size: readonly [number, number], pixels: number): void {
-    this.#renderer.setPixelRatio(pixels);
-    this.#renderer.setSize(size[0], size[1], false);
+    const wanted = `${size[0]} ${size[1]} ${pixels}`;
+    // Setting the size throws the drawing buffer away, even if it is the same size.
+    if (wanted !== this.#sized) {
+      this.#sized = wanted;
+      this.#renderer.setPixelRatio(pixels);
+      this.#renderer.setSize(size[0], size[1], false);
+    }
     this.#camera.projectionMatrix.fromArray(view.clip);
     this.#camera.projectionMatrixInverse.copy(this.#camera.projectionMatrix).invert();
     const riseOfStep = view.rise * this.#bands.step;

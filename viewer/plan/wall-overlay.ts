@@ -13,7 +13,7 @@ export function visibleRuns(points: readonly Px[], view: Projection, hidden: Hid
   if (view.lift === 0) return [points.map(([x, y]) => view.at(x, y, 0))];
   const runs: Px[][] = [];
   let run: Px[] = [];
-  for (const [x, y] of refined(points, 5 / view.scale)) {
+  for (const [x, y] of refined(points, 6 / view.scale)) {
     if (hidden(x, y, height)) {
       if (run.length > 1) runs.push(run);
       run = [];

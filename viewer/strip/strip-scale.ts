@@ -56,26 +56,32 @@ export function fluxCurve(wall: WallView): readonly (readonly [s: number, value:
 
 /**
  * Top of the scale for the share caught per length. The flux has no bound where a pad ends at wall that turns back,
- * so the scale reaches to half as much again as the mean of the busiest stretch, and what is above is cut off.
+ * so the scale reaches a fifth above what all but a twelfth of the busiest stretch stays below; the rest is cut off.
  */
 export function fluxTop(walls: readonly WallView[]): { readonly top: number; readonly cut: boolean } {
-  let mean = 0;
+  let wanted = 0;
   let most = 0;
   for (const wall of walls) {
-    let [caught, length] = [0, 0];
-    const curve = fluxCurve(wall);
-    wall.points.slice(1).forEach((b, i) => {
-      const a = wall.points[i] ?? b;
-      const chord = Math.hypot(b[0] - a[0], b[1] - a[1]);
-      caught += chord * (curve[i]?.[1] ?? 0);
-      length += chord;
-    });
-    if (length > 0) mean = Math.max(mean, caught / length);
-    for (const [, value] of curve) most = Math.max(most, value);
+    const parts = chordFluxes(wall).sort((a, b) => a.value - b.value);
+    const length = parts.reduce((sum, part) => sum + part.chord, 0);
+    let below = 0;
+    for (const part of parts) {
+      most = Math.max(most, part.value);
+      if (below < (length * 11) / 12) wanted = Math.max(wanted, 1.2 * part.value);
+      below += part.chord;
+    }
   }
-  const wanted = Math.min(most, 1.5 * mean);
+  wanted = Math.min(most, wanted);
   // An even number of steps, so that the middle of the scale is a nice number too.
   const step = 2 * niceStep(wanted, 4);
   const top = wanted > 0 ? step * Math.ceil(wanted / step - 1e-9) : 0;
   return { top, cut: most > top };
+}
+
+function chordFluxes(wall: WallView): { chord: number; value: number }[] {
+  return wall.points.slice(1).flatMap(([x, y], i) => {
+    const [fx, fy] = wall.points[i] ?? [x, y];
+    const value = wall.flux?.[i];
+    return value === undefined ? [] : [{ chord: Math.hypot(x - fx, y - fy), value }];
+  });
 }

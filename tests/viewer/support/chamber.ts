@@ -139,15 +139,18 @@ export function solveChamber(mesh: Mesh, loops: readonly Loop[], wallAt: WallAt,
     const c = [0, 1, 2].map((k) => mesh.triangles[t + k] ?? 0);
     const p = c.map(at);
     const e = [0, 1, 2].map((k): Point => {
-      const [a, b] = [p[(k + 1) % 3] ?? [0, 0], p[(k + 2) % 3] ?? [0, 0]];
+      const a: Point = p[(k + 1) % 3] ?? [0, 0];
+      const b: Point = p[(k + 2) % 3] ?? [0, 0];
       return [b[0] - a[0], b[1] - a[1]];
     });
-    const [e0, e1] = [e[0] ?? [0, 0], e[1] ?? [0, 0]];
+    const e0: Point = e[0] ?? [0, 0];
+    const e1: Point = e[1] ?? [0, 0];
     const area2 = e0[0] * e1[1] - e0[1] * e1[0];
     for (let i = 0; i < 3; i++) {
       load[c[i] ?? 0] = (load[c[i] ?? 0] ?? 0) + area2 / 6;
       for (let j = 0; j < 3; j++) {
-        const [a, b] = [e[i] ?? [0, 0], e[j] ?? [0, 0]];
+        const a: Point = e[i] ?? [0, 0];
+        const b: Point = e[j] ?? [0, 0];
         add(c[i] ?? 0, c[j] ?? 0, (d * (a[0] * b[0] + a[1] * b[1])) / (2 * area2));
       }
     }

@@ -212,7 +212,8 @@ export function fakeLayout(layout: string, start: string): LayoutView {
     start,
     answers,
     loops: loops.map((loop, l) => {
-      const [a, b] = [loop.points[0] ?? [0, 0], loop.points[1] ?? [0, 0]];
+      const a: Point = loop.points[0] ?? [0, 0];
+      const b: Point = loop.points[1] ?? [0, 0];
       const size = Math.hypot(b[0] - a[0], b[1] - a[1]);
       return {
         name: loop.name,

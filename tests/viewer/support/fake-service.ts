@@ -97,7 +97,10 @@ function answer(request: IncomingMessage, response: ServerResponse, { page, pace
     ];
     const next = () => {
       const step = steps.shift();
-      if (step === undefined) return response.end();
+      if (step === undefined) {
+        response.end();
+        return;
+      }
       response.write(`event: job\ndata: ${JSON.stringify(view(name, step[0], step[1], step[2]))}\n\n`);
       if (Number.isFinite(pace)) setTimeout(next, pace);
     };
