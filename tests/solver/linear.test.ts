@@ -83,7 +83,7 @@ describe('multigrid', () => {
     [absorbing(), reflecting, partly(0.2, 1), reflecting],
   );
 
-  it('ends where the factor does, in at most 30 steps', () => {
+  it('ends where the factor does, in a few steps', () => {
     const system = assemble(mesh, media);
     const exact = prepare(system, { preconditioner: 'factor' }).solve(system.load);
     const prepared = prepare(system, { preconditioner: 'multigrid' });
@@ -91,7 +91,7 @@ describe('multigrid', () => {
     if (!exact.converged || !found.converged) throw new Error('not converged');
     expect(prepared.preconditioner).toBe('multigrid');
     expect(found.iterations).toBeGreaterThan(3);
-    expect(found.iterations).toBeLessThan(30);
+    expect(found.iterations).toBeLessThan(17); // 14 seen; 19 when constants are not prolonged to constants
     found.x.forEach((value, i) => {
       expect(Math.abs(value / (exact.x[i] ?? Number.NaN) - 1)).toBeLessThan(1e-8);
     });
@@ -127,6 +127,7 @@ it('many right-hand sides through the factor at once are what each is alone', ()
     sides.forEach((rhs, r) => {
       const [one, block] = [prepared.solve(rhs), all[r]];
       if (!one.converged || !block?.converged) throw new Error('not converged');
+      expect(block.iterations).toBe(0);
       one.x.forEach((value, i) => {
         expect(block.x[i]).toBeCloseTo(value, 14);
       });
