@@ -1,5 +1,5 @@
 import type { Chain, Healing, Point } from '../../mesher/index.ts';
-import type { Coefficient, NoiseConvention } from '../../solver/index.ts';
+import type { Coefficient, Drift, NoiseConvention, Tensor } from '../../solver/index.ts';
 
 /** A value that the case states, converted to the case's own units, with how well it is known and where it is from. */
 export interface Stated {
@@ -95,6 +95,26 @@ export type Start =
   /** A start that this version cannot answer, and why. */
   | { readonly kind: 'notYet'; readonly name: string; readonly notAvailable: readonly string[] };
 
+/** D: one coefficient, or a tensor where diffusion depends on direction. */
+export type Diffusion = Coefficient | { readonly kind: 'tensor'; readonly tensor: Tensor };
+
+/** What the particle does in the compartment; coefficients in the case's units, of places with y upwards. */
+export interface Particle {
+  /** Isothermal where D is the same everywhere: then the three readings are one process. */
+  readonly noise: NoiseConvention;
+  /** D outside every region that has its own. */
+  readonly diffusion: Diffusion;
+  /** By region index, as the other maps. */
+  readonly diffusionIn: ReadonlyMap<number, Diffusion>;
+  readonly drift?: Drift;
+  readonly driftIn: ReadonlyMap<number, Drift>;
+  /** Rate of being lost for good. */
+  readonly loss?: Coefficient;
+  readonly lossIn: ReadonlyMap<number, Coefficient>;
+  /** D as stated, where it is a plain value: with its range and source. */
+  readonly stated?: Stated;
+}
+
 /** What is asked of a layout; times in the case's time unit, fractions 0..1. */
 export type Figure =
   | { readonly kind: 'mean' }
@@ -139,15 +159,9 @@ export interface Case {
   readonly title: string;
   readonly units: CaseUnits;
   readonly drawing: Drawing;
-  readonly particle: {
-    readonly noise: NoiseConvention;
-    /** D outside every region that has its own. */
-    readonly diffusion: Coefficient;
-    /** By region index. */
-    readonly diffusionIn: ReadonlyMap<number, Coefficient>;
-    /** D as stated, where it is a plain value: with its range and source. */
-    readonly stated?: Stated;
-  };
+  readonly particle: Particle;
+  /** Depth of the compartment in the length unit; absent where the case gives none. */
+  readonly depth?: Coefficient;
   readonly walls: readonly NamedWall[];
   readonly layouts: readonly Layout[];
   readonly reference: string;

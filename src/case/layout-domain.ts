@@ -7,10 +7,11 @@ import {
   parameterAtLength,
   partOf,
 } from '../../mesher/index.ts';
-import type { Medium, Problem, Wall } from '../../solver/index.ts';
+import type { Problem, Wall } from '../../solver/index.ts';
 import { type Ruler, rulerOf } from './arc-length.ts';
 import type { Case, Layout } from './case.ts';
 import { junctionsOf } from './junctions.ts';
+import { mediaOf } from './layout-media.ts';
 import { type Claim, claimAt, claimsOf } from './wall-claims.ts';
 
 /** What a tag of the layout's domain stands for. */
@@ -42,8 +43,9 @@ export interface LayoutDomain {
 /**
  * Cuts a case's drawing for one layout: every piece of wall has one kind and a tag of its own.
  *
- * Exits are the walls that catch, in the order of the layout. Of several regions with a D of their own over one
- * place, the last listed counts: an inner region is listed after the one around it.
+ * Exits are the walls that catch, then the regions that catch from below, in the order of the layout. Of several
+ * regions with a D of their own over one place, the last listed counts: an inner region is listed after the one
+ * around it.
  *
  * @throws {CaseError} WALL_KINDS_OVERLAP where two walls of the layout lie on one stretch, WALL_KIND_NOT_POSSIBLE for
  *   a wall on nothing but holes left out
@@ -68,12 +70,7 @@ export function layoutDomain(theCase: Case, layout: Layout): LayoutDomain {
     regions: numbered(drawing.regions, pieces.size),
     tolerance: drawing.tolerance,
   };
-  const media = (set: readonly number[]): Medium => {
-    const own = set.filter((region) => particle.diffusionIn.has(region)).at(-1);
-    return {
-      diffusion: (own === undefined ? undefined : particle.diffusionIn.get(own)) ?? particle.diffusion,
-    };
-  };
+  const media = mediaOf(theCase, layout, exits);
   return {
     domain,
     pieces,
@@ -84,6 +81,7 @@ export function layoutDomain(theCase: Case, layout: Layout): LayoutDomain {
       media: regionSets.map(media),
       walls: new Map([...pieces].map(([tag, piece]) => [tag, piece.physics])),
       exitCount: exits.length,
+      ...(theCase.depth && { depth: theCase.depth }),
     }),
   };
 }

@@ -4,12 +4,6 @@
  * is no longer held back.
  */
 const words = {
-  drift: 'drift',
-  loss: 'loss',
-  tensor: 'a diffusion tensor',
-  depth: 'a depth that varies',
-  floor: 'regions that catch from below',
-  permeable: 'permeable inner walls',
   'density start': 'starts by a density',
   'table start': 'starts from a table',
   'standard deviation': 'the standard deviation',

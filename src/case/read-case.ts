@@ -1,4 +1,5 @@
 import Value from 'typebox/value';
+import type { Coefficient } from '../../solver/index.ts';
 import { caseHash } from './canonical.ts';
 import type { Case, CaseUnits } from './case.ts';
 import { type CaseContext, type CaseSource, caseContext, failIn } from './case-context.ts';
@@ -10,7 +11,7 @@ import { joinKey } from './key-path.ts';
 import { suggestName } from './nearest-name.ts';
 import { parseJson } from './parse-json.ts';
 import { readAccuracy, readAsked, readReport } from './read-asked.ts';
-import { readParticle } from './read-particle.ts';
+import { canBeLost, readParticle } from './read-particle.ts';
 import { readPins, readStarts } from './read-starts.ts';
 import { readVarying } from './read-varying.ts';
 import { readLayouts, readWalls } from './read-walls.ts';
@@ -79,10 +80,12 @@ class CaseReading {
     const { raw, ctx } = this;
     this.refuseNames();
     const drawing = buildDrawing(withoutNotes(raw.drawing), ctx);
-    const { particle, notAvailable, hasLoss } = readParticle(raw.particle, drawing, ctx);
+    const particle = readParticle(raw.particle, drawing, ctx);
+    const hasLoss = canBeLost(particle);
+    const depth = this.readDepth(drawing.writtenDown === true);
     const walls = readWalls(raw.walls, drawing, ctx);
-    const held = [...notAvailable, ...this.readDepth(drawing.writtenDown === true)];
-    const layouts = readLayouts(raw.layouts, { drawing, walls, notAvailable: held, hasLoss }, ctx);
+    const hasDepth = depth !== undefined;
+    const layouts = readLayouts(raw.layouts, { drawing, walls, hasDepth, hasLoss }, ctx);
     const starts = readStarts(raw.starts, drawing, ctx);
     const floors = layouts.flatMap((layout) => layout.floors?.map((floor) => floor.region) ?? []);
     const names: FigureNames = {
@@ -125,6 +128,7 @@ class CaseReading {
       units: ctx.units,
       drawing,
       particle,
+      ...(depth === undefined ? {} : { depth }),
       walls,
       layouts,
       reference,
@@ -191,16 +195,11 @@ class CaseReading {
     );
   }
 
-  /** A depth that is the same everywhere changes no answer of a case without floors (METHODS 1). */
-  private readDepth(writtenDown: boolean): string[] {
+  private readDepth(writtenDown: boolean): Coefficient | undefined {
     const { depth } = this.raw.drawing;
-    if (depth === undefined) return [];
-    const { coefficient } = readVarying(depth, 'length', 'drawing.depth', this.ctx, {
-      isPositive: true,
-      writtenDown,
-    });
-    const told = coefficient.kind === 'varying' ? this.ctx.notYet('depth', 'drawing.depth') : undefined;
-    return told === undefined ? [] : [told];
+    if (depth === undefined) return undefined;
+    const options = { isPositive: true, writtenDown };
+    return readVarying(depth, 'length', 'drawing.depth', this.ctx, options).coefficient;
   }
 
   private reference(layouts: readonly string[]): string {

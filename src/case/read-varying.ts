@@ -11,11 +11,8 @@ import { caseUnit, factorToCase } from './units.ts';
 /** A value of the case, the same everywhere or not. */
 export interface Varying {
   readonly coefficient: Coefficient;
-  readonly isExpression: boolean;
   /** Where the case states a plain value. */
   readonly stated?: Stated;
-  /** Whether the case says how well it is known. */
-  readonly hasRange: boolean;
 }
 
 /** Options of {@link readVarying}. */
@@ -42,25 +39,21 @@ export function readVarying(
   if (typeof raw !== 'object' || !('expression' in raw)) {
     if (typeof raw === 'string') refuseBareExpression(raw, dimension, key, ctx);
     const stated = (isPositive ? ctx.positive : ctx.stated)(raw, dimension, key);
-    return {
-      coefficient: { kind: 'constant', value: stated.value },
-      isExpression: false,
-      stated,
-      hasRange: stated.within !== undefined,
-    };
+    if (stated.within !== undefined) ctx.notYet('within', key);
+    return { coefficient: { kind: 'constant', value: stated.value }, stated };
   }
   const { at, varies } = compileExpression(raw.expression, joinKey(key, 'expression'), ctx.fail);
   const factor = unitFactor(raw.unit, dimension, key, ctx);
-  const hasRange = raw.within !== undefined;
+  if (raw.within !== undefined) ctx.notYet('within', key);
   if (!varies) {
     const value = at(0, 0) * factor;
     if (isPositive) ctx.positive(value, dimension, key);
-    return { coefficient: { kind: 'constant', value }, isExpression: true, hasRange };
+    return { coefficient: { kind: 'constant', value } };
   }
   const scaled = writtenDown
     ? (x: number, y: number) => factor * at(x, -y)
     : (x: number, y: number) => factor * at(x, y);
-  return { coefficient: { kind: 'varying', at: scaled }, isExpression: true, hasRange };
+  return { coefficient: { kind: 'varying', at: scaled } };
 }
 
 function unitFactor(unit: string | undefined, dimension: Dimension, key: string, ctx: CaseContext): number {

@@ -1,6 +1,7 @@
 import { rulerOf } from './arc-length.ts';
 import type { Assignment, Drawing, Layout, NamedWall, WallKind } from './case.ts';
 import type { CaseContext } from './case-context.ts';
+import { exampleOf } from './dimensions.ts';
 import { joinKey } from './key-path.ts';
 import { suggestName } from './nearest-name.ts';
 import type { RawCase, RawExtent, RawKind, RawLayout } from './schema.ts';
@@ -24,8 +25,8 @@ export const readWalls = (raw: RawCase['walls'], drawing: Drawing, ctx: CaseCont
 export interface LayoutSurroundings {
   readonly drawing: Drawing;
   readonly walls: readonly NamedWall[];
-  /** What of the particle holds back every layout. */
-  readonly notAvailable: readonly string[];
+  /** Whether the drawing gives a depth, which catching from below needs. */
+  readonly hasDepth: boolean;
   /** Whether particles can be lost inside, so that a layout without exits has an answer. */
   readonly hasLoss: boolean;
 }
@@ -51,11 +52,6 @@ export function readLayouts(raw: RawCase['layouts'], around: LayoutSurroundings,
 function readLayout(name: string, raw: RawLayout, around: LayoutSurroundings, ctx: CaseContext): Layout {
   const { drawing, walls } = around;
   const key = joinKey('layouts', name);
-  const held = [...around.notAvailable];
-  const hold = (what: string, of: string) => {
-    const told = ctx.notYet(what, `layout ${JSON.stringify(name)}, ${of}`);
-    if (told !== undefined) held.push(told);
-  };
   const { without = [] } = raw;
   readWithout(without, key, drawing, ctx);
   const assignments: Assignment[] = [];
@@ -66,8 +62,9 @@ function readLayout(name: string, raw: RawLayout, around: LayoutSurroundings, ct
     const wall = walls.find((each) => each.name === of);
     if (typeof kind === 'object' && 'floor' in kind) {
       refuseFloor(of, at, around, ctx);
-      hold('floor', of);
-      floors.push({ region: of, kappa: ctx.positive(kind.floor, 'reactivity', joinKey(at, 'floor')) });
+      const kappa = ctx.positive(kind.floor, 'reactivity', joinKey(at, 'floor'));
+      if (kappa.within !== undefined) ctx.notYet('within', joinKey(at, 'floor'));
+      floors.push({ region: of, kappa });
       continue;
     }
     if (wall === undefined) {
@@ -82,7 +79,6 @@ function readLayout(name: string, raw: RawLayout, around: LayoutSurroundings, ct
       return ctx.fail('NAME_UNKNOWN', `no wall is called ${JSON.stringify(of)}`, at, remedy);
     }
     const assignment = readAssignment(wall, kind, at, drawing, ctx);
-    if (assignment.kind.kind === 'permeable') hold('permeable', of);
     refuseLeftOut(assignment, without, at, ctx);
     assignments.push(assignment);
   }
@@ -100,7 +96,6 @@ function readLayout(name: string, raw: RawLayout, around: LayoutSurroundings, ct
     assignments,
     without,
     ...(floors.length === 0 ? {} : { floors }),
-    ...(held.length === 0 ? {} : { notAvailable: held }),
   };
 }
 
@@ -119,7 +114,15 @@ function readWithout(without: readonly string[], key: string, drawing: Drawing, 
 
 function refuseFloor(of: string, key: string, around: LayoutSurroundings, ctx: CaseContext): void {
   const regions = around.drawing.regions.map((region) => region.name);
-  if (regions.includes(of)) return;
+  if (regions.includes(of)) {
+    if (around.hasDepth) return;
+    ctx.fail(
+      'FLOOR_WITHOUT_DEPTH',
+      `${JSON.stringify(of)} catches from below, and the drawing has no "depth"`,
+      key,
+      `Add one to "drawing", such as "depth": ${exampleOf('length', ctx.units)}: what is caught per time is the reactivity over the depth`,
+    );
+  }
   const isWall = around.walls.some((wall) => wall.name === of);
   const remedy = isWall
     ? 'Give a wall a kind such as { "partlyAbsorbing": "2e-3 mm/s" }'

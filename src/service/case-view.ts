@@ -1,6 +1,5 @@
 import { type Healing, pointAt } from '../../mesher/index.ts';
-import type { Coefficient } from '../../solver/index.ts';
-import type { Asked, Case, CaseUnits, Drawing, Start } from '../case/case.ts';
+import type { Asked, Case, CaseUnits, Diffusion, Drawing, Start } from '../case/case.ts';
 import type { CaseView } from './contract.ts';
 
 /** What the page says about a case before anything is solved. */
@@ -88,11 +87,19 @@ function count(number: number, what: string): string[] {
   return [number === 1 ? `1 ${what}` : `${number} ${what}s`];
 }
 
-function diffusionWords(everywhere: Coefficient, regions: number, units: CaseUnits): string {
+function diffusionWords(everywhere: Diffusion, regions: number, units: CaseUnits): string {
   const unit = units.length === '' ? '' : `${units.length}²/${units.time}`;
-  const value =
-    everywhere.kind === 'constant' ? withUnit(short(everywhere.value), unit) : 'varies with place';
+  const value = diffusionValue(everywhere, unit);
   return regions === 0 ? value : `${value}, other values in ${count(regions, 'region').join('')}`;
+}
+
+function diffusionValue(diffusion: Diffusion, unit: string): string {
+  if (diffusion.kind === 'constant') return withUnit(short(diffusion.value), unit);
+  if (diffusion.kind === 'varying') return 'varies with place';
+  const { tensor } = diffusion;
+  if (tensor.kind === 'varying') return 'varies with place and direction';
+  const [xx, xy, yy] = tensor.value;
+  return withUnit(`xx ${short(xx)}, xy ${short(xy)}, yy ${short(yy)}`, unit);
 }
 
 function healedWords({ what, loop, at }: Healing, units: CaseUnits): string {

@@ -36,6 +36,8 @@ function cut({
       noise: 'isothermal',
       diffusion: constant(1),
       diffusionIn: new Map(Object.entries(ownD).map(([region, value]) => [Number(region), constant(value)])),
+      driftIn: new Map(),
+      lossIn: new Map(),
     },
   } as unknown as Case;
   return layoutDomain(theCase, { name: 'a', assignments, without });

@@ -95,26 +95,42 @@ describe('a layout', () => {
     expect(readObject(smallCase({ ...parts, particle: { diffusion: 1, loss: 1 } })).warnings).toEqual([]);
   });
 
-  it('with a floor is accepted, told and held back, and can be asked for its share', () => {
-    const read = readObject(
-      smallCase({ layouts: { a: { bay: { floor: '1e-3 mm/s' } } }, asked: [{ figure: 'share of bay' }] }),
-    );
+  it('with a floor needs a depth, and can be asked for the share of the floor', () => {
+    const drawing = (parts: object) => ({ ...(smallCase()['drawing'] as object), ...parts });
+    const parts = { layouts: { a: { bay: { floor: '1e-3 mm/s' } } }, asked: [{ figure: 'share of bay' }] };
+    expect(refusalOf(smallCase(parts))).toMatchObject({
+      code: 'FLOOR_WITHOUT_DEPTH',
+      where: { key: 'layouts.a.bay' },
+    });
+    const read = readObject(smallCase({ ...parts, drawing: drawing({ depth: '100 um' }) }));
     expect(read.layouts[0]?.floors).toEqual([{ region: 'bay', kappa: { value: 1e-3 } }]);
-    expect(read.layouts[0]?.notAvailable).toEqual([
-      'regions that catch from below (layout "a", bay): not available yet',
-    ]);
+    expect(read.depth).toEqual({ kind: 'constant', value: 0.1 });
+    expect(read.notAvailable).toEqual([]);
     expect(read.asked[0]?.figure).toEqual({ kind: 'share', wall: 'bay' });
   });
 
-  it('is not held back by a depth that is the same everywhere', () => {
-    const drawing = { outline: { rectangle: [0, 0, 1, 1] } };
-    const parts = { walls: { floor: { on: 'outline' } }, layouts: { a: { floor: 'absorbing' } } };
-    const depth = (value: unknown) =>
-      readObject(smallCase({ ...parts, drawing: { ...drawing, depth: value } })).notAvailable;
-    expect(depth('0.1 mm')).toEqual([]);
-    expect(depth({ expression: '0.1 + x', unit: 'mm' })).toEqual([
-      'a depth that varies (drawing.depth): not available yet',
-    ]);
+  it('has a depth that varies in the units of the case, whatever its own', () => {
+    const drawing = { outline: { rectangle: [0, 0, 1, 1] }, depth: { expression: '100 + 50*x', unit: 'um' } };
+    const { depth } = readObject(
+      smallCase({
+        drawing,
+        walls: { floor: { on: 'outline' } },
+        layouts: { a: { floor: 'absorbing' } },
+      }),
+    );
+    expect(depth?.kind === 'varying' && depth.at(1, 0)).toBeCloseTo(0.15, 15);
+  });
+
+  it('tells that ranges of a reactivity, a floor and a depth bear on no answer yet', () => {
+    const known = (value: string) => ({ value, within: '10 %' });
+    const read = readObject(
+      smallCase({
+        drawing: { ...(smallCase()['drawing'] as object), depth: known('1 mm') },
+        layouts: { a: { bay: { floor: known('1 mm/s') }, coat: { partlyAbsorbing: known('1 mm/s') } } },
+      }),
+    );
+    const places = read.notAvailable.map((told) => /\((.*)\)/.exec(told)?.[1]);
+    expect(places).toEqual(['drawing.depth', 'layouts.a.bay.floor', 'layouts.a.coat.partlyAbsorbing']);
   });
 });
 

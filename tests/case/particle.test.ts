@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { Coefficient } from '../../solver/index.ts';
 import { describeError } from '../../src/case/describe-error.ts';
 import { readObject, refusalOf, smallCase } from './small-case.ts';
 
@@ -31,9 +32,23 @@ describe('noise', () => {
     );
   });
 
-  it('cannot be Stratonovich for a tensor that varies', () => {
-    const raw = { diffusion: { principal: [varying, D] }, noise: 'stratonovich' };
-    expect(message(raw)).toContain('it depends on which root of D is meant');
+  it('is isothermal for one constant D, where the three readings are one process', () => {
+    expect(particle({ diffusion: D, noise: 'ito' }).particle.noise).toBe('isothermal');
+  });
+
+  it('cannot be Stratonovich for a tensor that varies or jumps, nor Itô for one that jumps', () => {
+    const raw = { diffusion: { principal: [varying, D] } };
+    const isTensorRefusal = (parts: Record<string, unknown>, words: string) => {
+      const error = refusalOf(smallCase({ particle: parts }));
+      expect(error).toMatchObject({ code: 'TENSOR_CONVENTION', where: { key: 'particle.noise' } });
+      expect(error.what).toContain(words);
+    };
+    isTensorRefusal({ ...raw, noise: 'stratonovich' }, 'it depends on which root of D is meant');
+    const jump = { diffusion: { principal: [1, 2] }, diffusionIn: { bay: 1 } };
+    isTensorRefusal({ ...jump, noise: 'stratonovich' }, 'it depends on which root of D is meant');
+    isTensorRefusal({ ...jump, noise: 'ito' }, 'jumps from one region to the next');
+    expect(particle({ ...raw, noise: 'ito' }).particle.noise).toBe('ito');
+    expect(particle({ ...jump, noise: 'isothermal' }).particle.noise).toBe('isothermal');
   });
 });
 
@@ -129,40 +144,103 @@ describe('D', () => {
   });
 });
 
-describe('what of a particle is not available yet', () => {
-  it.each([
-    [{ drift: { x: '1e-3 mm/s', y: 0 } }, 'drift (particle.drift): not available yet'],
-    [
-      { driftIn: { bay: { potential: { expression: 'x^2' } } } },
-      'drift (particle.driftIn.bay): not available yet',
-    ],
-    [{ loss: '0.01 1/s' }, 'loss (particle.loss): not available yet'],
-    [{ lossIn: { bay: 1 } }, 'loss (particle.lossIn.bay): not available yet'],
-    [
-      {
-        diffusion: {
-          tensor: [
-            [2, 0],
-            [0, 1],
-          ],
-        },
+/** D, drift or loss at a place. */
+const valueAt = (c: Coefficient | undefined, x: number, y: number) =>
+  c?.kind === 'varying' ? c.at(x, y) : c?.value;
+
+describe('a tensor', () => {
+  const tensorOf = (raw: unknown, parts: Record<string, unknown> = {}) => {
+    const { diffusion } = readObject(smallCase({ particle: { diffusion: raw }, ...parts })).particle;
+    if (diffusion.kind !== 'tensor' || diffusion.tensor.kind !== 'constant') throw new Error('no tensor');
+    return diffusion.tensor.value;
+  };
+
+  it('is given by its entries, each a value of its own', () => {
+    const rows = [
+      ['2e-4 mm^2/s', '-50 um^2/s'],
+      [-5e-5, 1e-4],
+    ];
+    expect(tensorOf({ tensor: rows })).toEqual([2e-4, -5e-5, 1e-4]);
+  });
+
+  it('or by its principal values and how the first axis is turned', () => {
+    // D = R diag(3, 1) Rᵀ with a turn of 30°: xx = 3·¾ + 1·¼, xy = (3 − 1)·√3/4, yy = 3·¼ + 1·¾.
+    const [xx, xy, yy] = tensorOf({ principal: [3, 1], turned: '30 deg' });
+    expect(xx).toBeCloseTo(2.5, 14);
+    expect(xy).toBeCloseTo(Math.sqrt(3) / 2, 14);
+    expect(yy).toBeCloseTo(1.5, 14);
+  });
+
+  it('varies where an entry does', () => {
+    const { diffusion } = particle({
+      diffusion: {
+        tensor: [
+          [varying, 0],
+          [0, '200 um^2/s'],
+        ],
       },
-      'a diffusion tensor (particle.diffusion): not available yet',
-    ],
-  ])('%j holds back every layout and says so', (raw, told) => {
-    const read = particle({ diffusion: D, ...raw });
-    expect(read.notAvailable).toEqual([told]);
-    expect(read.layouts.map((layout) => layout.notAvailable)).toEqual([[told], [told]]);
+      noise: 'isothermal',
+    }).particle;
+    const tensor = diffusion.kind === 'tensor' && diffusion.tensor;
+    const entries = tensor && tensor.kind === 'varying' ? tensor.at(1, 5) : [];
+    expect(entries).toEqual([2e-4, 0, 2e-4]);
+  });
+});
+
+describe('drift and loss', () => {
+  it('are read in the units of the case, everywhere and by region', () => {
+    const read = particle({
+      diffusion: D,
+      drift: { x: '1 um/s', y: { expression: '3*x', unit: 'mm/min' } },
+      driftIn: { bay: { potential: { expression: '4*x' } } },
+      loss: '6 1/min',
+      lossIn: { bay: 0 },
+    }).particle;
+    const { drift } = read;
+    if (drift?.kind !== 'components') throw new Error('no components');
+    expect(valueAt(drift.x, 0, 0)).toBe(1e-3);
+    expect(valueAt(drift.y, 2, 0)).toBeCloseTo(0.1, 15);
+    const own = read.driftIn.get(0);
+    expect(own?.kind === 'potential' && valueAt(own.value, 2, 0)).toBe(8);
+    expect(read.loss).toEqual({ kind: 'constant', value: 0.1 });
+    expect(valueAt(read.lossIn.get(0), 0, 0)).toBe(0);
   });
 
-  it('is nothing where a drift or a loss is 0', () => {
-    const read = particle({ diffusion: D, drift: { x: 0, y: '0 mm/s' }, loss: 0 });
-    expect(read.notAvailable).toEqual([]);
-    expect(read.layouts[0]?.notAvailable).toBeUndefined();
+  it('are told where a range of theirs bears on no answer yet', () => {
+    const read = particle({ diffusion: D, drift: { x: { value: 1, within: '10 %' }, y: 0 } });
+    expect(read.notAvailable).toEqual([
+      'what ranges of inputs do to the answers (particle.drift.x): not available yet',
+    ]);
+    expect(read.layouts.map((layout) => layout.notAvailable)).toEqual([undefined, undefined]);
+  });
+});
+
+describe('where y is written downwards', () => {
+  const drawing = { y: 'down', outline: { rectangle: [0, 0, 1, 1] } };
+  const parts = { drawing, walls: { floor: { on: 'outline' } }, layouts: { a: { floor: 'absorbing' } } };
+  const down = (raw: Record<string, unknown>) => readObject(smallCase({ ...parts, particle: raw })).particle;
+
+  it('a drift downwards as seen has a positive y, and coefficients know the place as written', () => {
+    // Drawn upwards, the written place (0, 3) is (0, −3).
+    const { drift } = down({ diffusion: D, drift: { x: { expression: 'y', unit: 'mm/s' }, y: 2 } });
+    if (drift?.kind !== 'components') throw new Error('no components');
+    expect([valueAt(drift.x, 0, -3), valueAt(drift.y, 0, -3)]).toEqual([3, -2]);
+    const other = down({ diffusion: D, drift: { x: 0, y: { expression: 'y', unit: 'mm/s' } } }).drift;
+    expect(other?.kind === 'components' && valueAt(other.y, 0, -3)).toBe(-3);
+    const { loss } = down({ diffusion: D, loss: { expression: 'y', unit: '1/s' } });
+    expect(valueAt(loss, 0, -3)).toBe(3);
   });
 
-  it('never leaves a tensor to be solved as a number', () => {
-    const { diffusion } = particle({ diffusion: { principal: [1, 2] } }).particle;
-    expect(diffusion.kind === 'constant' && diffusion.value).toBeNaN();
+  it('the mixed entry of a tensor turns its sign, an angle as seen does not', () => {
+    const entries = (diffusion: object) => {
+      const read = down({ diffusion }).diffusion;
+      return read.kind === 'tensor' && read.tensor.kind === 'constant' ? read.tensor.value : [];
+    };
+    const rows = [
+      [2, 1],
+      [1, 2],
+    ];
+    expect(entries({ tensor: rows })).toEqual([2, -1, 2]);
+    expect(entries({ principal: [3, 1], turned: 45 })[1]).toBeCloseTo(1, 14);
   });
 });
