@@ -211,6 +211,7 @@ export class App {
   #lost(): void {
     const turn = this.#next();
     document.body.classList.add('lost');
+    this.#open?.lost();
     this.#frame.solver('Connection lost: the service does not answer. What is shown is kept.');
     this.#frame.say('Connection lost.');
     const again = () => {

@@ -59,6 +59,11 @@ export class OpenCase {
     this.#job = undefined;
   }
 
+  /** The service does not answer at the moment. */
+  lost(): void {
+    this.#bench.lost();
+  }
+
   dispose(): void {
     this.letGo();
     this.#bench.dispose();

@@ -68,3 +68,9 @@ export function tokenColour(name: string, fallback: string): string {
   const value = getComputedStyle(document.documentElement).getPropertyValue(name).trim();
   return /^#[0-9a-f]{6}$/i.test(value) ? value : fallback;
 }
+
+/** How much larger than designed the reader has set the text: 1 at a root size of 14 px. */
+export function textScale(): number {
+  const size = Number.parseFloat(getComputedStyle(document.documentElement).fontSize);
+  return size > 0 ? size / 14 : 1;
+}

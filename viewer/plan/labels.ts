@@ -3,11 +3,14 @@ import type { Rect } from './projection.ts';
 
 /** Puts writing where nothing else stands yet. */
 export class LabelRoom {
+  /** How much larger than designed the text is. */
+  readonly textScale: number;
   readonly #area: Rect;
   readonly #taken: Rect[] = [];
 
-  constructor(area: Rect) {
+  constructor(area: Rect, textScale = 1) {
     this.#area = area;
+    this.textScale = textScale;
   }
 
   /** Marks a rectangle as taken without asking. */

@@ -82,24 +82,27 @@ export function pinMarks(
   around: Rect,
 ): SVGGElement {
   const group = svg('g', { class: 'pins' });
+  const k = room.textScale;
+  const r = 9 * Math.min(k, 1.6);
   const places = pins.map((pin) => {
     const value = locator.valueNear(pin.at[0], pin.at[1]);
     return view.at(pin.at[0], pin.at[1], (Number.isNaN(value) ? 0 : value) * view.rise);
   });
-  for (const [x, y] of places) room.take({ left: x - 11, right: x + 11, top: y - 11, bottom: y + 11 });
+  for (const [x, y] of places)
+    room.take({ left: x - r - 2, right: x + r + 2, top: y - r - 2, bottom: y + r + 2 });
   pins.forEach((pin, i) => {
     const at = places[i] ?? [0, 0];
-    const width = Math.max(widthOf(pin.reading, 8.2), widthOf(pin.name, 6.2));
-    const box: [number, number] = [width, 36];
+    const width = k * Math.max(widthOf(pin.reading, 8.2), widthOf(pin.name, 6.2));
+    const box: [number, number] = [width, 36 * k];
     const middle = room.place(placesAround(at, around, box), box);
     if (middle !== undefined) {
       const side = middle[0] + width / 2 < around.left ? 1 : middle[0] - width / 2 > around.right ? -1 : 0;
       const edge: Px =
         side === 0
-          ? [Math.min(middle[0] + width / 2, Math.max(middle[0] - width / 2, at[0])), middle[1] + 18]
+          ? [Math.min(middle[0] + width / 2, Math.max(middle[0] - width / 2, at[0])), middle[1] + 18 * k]
           : [middle[0] + side * (width / 2 + 3), middle[1]];
       const size = Math.hypot(edge[0] - at[0], edge[1] - at[1]) || 1;
-      const from: Px = [at[0] + (9 * (edge[0] - at[0])) / size, at[1] + (9 * (edge[1] - at[1])) / size];
+      const from: Px = [at[0] + (r * (edge[0] - at[0])) / size, at[1] + (r * (edge[1] - at[1])) / size];
       const d = pathOf([from, edge]);
       // Numbers of isolines keep off the leader.
       for (const [x, y] of refined([from, edge], 10)) {
@@ -109,13 +112,13 @@ export function pinMarks(
       const anchor = side === 1 ? 'end' : 'start';
       const x = side === 1 ? middle[0] + width / 2 : middle[0] - width / 2;
       group.append(
-        text([x, middle[1] - 3], pin.reading, { class: 'reading', 'text-anchor': anchor }),
-        text([x, middle[1] + 13], pin.name, { class: 'soft', 'text-anchor': anchor }),
+        text([x, middle[1] - 3 * k], pin.reading, { class: 'reading', 'text-anchor': anchor }),
+        text([x, middle[1] + 13 * k], pin.name, { class: 'soft', 'text-anchor': anchor }),
       );
     }
     group.append(
-      svg('circle', { class: 'pin', cx: at[0].toFixed(1), cy: at[1].toFixed(1), r: 9 }),
-      text([at[0], at[1] + 4], String(i + 1), { class: 'pin-number' }),
+      svg('circle', { class: 'pin', cx: at[0].toFixed(1), cy: at[1].toFixed(1), r }),
+      text([at[0], at[1] + 4 * k], String(i + 1), { class: 'pin-number' }),
     );
   });
   return group;
@@ -142,6 +145,7 @@ function nameCandidates(at: Px, along: Px, out: Px, size: readonly [number, numb
 
 function wallName(stretch: Stretch, letter: string, view: Projection, room: LabelRoom): SVGElement[] {
   const { wall } = stretch;
+  const k = room.textScale;
   const line = wall.points.map(([x, y]): Px => view.at(x, y, 0));
   const length = lengthsAlong(line).at(-1) ?? 0;
   if (stretch.whole && stretch.post && view.lift === 0) {
@@ -149,7 +153,7 @@ function wallName(stretch: Stretch, letter: string, view: Projection, room: Labe
     const n = Math.max(1, wall.points.length - 1);
     if (length / (2 * Math.PI) > 15) {
       const [mx, my] = view.at(x / n, y / n, 0);
-      return [text([mx, my + 5], letter, { class: 'wall-name letter' })];
+      return [text([mx, my + 5 * k], letter, { class: 'wall-name letter' })];
     }
   }
   const [middle] = placesAt(line, [length / 2]);
@@ -167,14 +171,14 @@ function wallName(stretch: Stretch, letter: string, view: Projection, room: Labe
         ];
   for (const [words = '', below = ''] of forms) {
     const size: [number, number] = [
-      Math.max(widthOf(words, 6.9), below === '' ? 0 : widthOf(below, 6)),
-      below === '' ? 17 : 33,
+      k * Math.max(widthOf(words, 6.9), below === '' ? 0 : widthOf(below, 6)),
+      k * (below === '' ? 17 : 33),
     ];
     const at = room.place(nameCandidates(middle.at, middle.along, out, size), size);
     if (at === undefined) continue;
-    const top: Px = [at[0], at[1] + (below === '' ? 4 : -4)];
+    const top: Px = [at[0], at[1] + k * (below === '' ? 4 : -4)];
     const parts = [text(top, words, { class: 'wall-name' })];
-    if (below !== '') parts.push(text([at[0], at[1] + 12], below, { class: 'soft' }));
+    if (below !== '') parts.push(text([at[0], at[1] + 12 * k], below, { class: 'soft' }));
     return parts;
   }
   return [];
@@ -193,8 +197,10 @@ export function wallNames(
   if (outline !== undefined && view.lift === 0) {
     const at = view.at(outline.mark[0], outline.mark[1], 0);
     const out = outwardPx(outline, view);
-    const place = room.place(nameCandidates(at, [-out[1], out[0]], out, [36, 16]), [36, 16]);
-    if (place !== undefined) group.append(text([place[0], place[1] + 4], 's = 0', { class: 'tick' }));
+    const size: [number, number] = [36 * room.textScale, 16 * room.textScale];
+    const place = room.place(nameCandidates(at, [-out[1], out[0]], out, size), size);
+    if (place !== undefined)
+      group.append(text([place[0], place[1] + 4 * room.textScale], 's = 0', { class: 'tick' }));
   }
   for (const stretch of catchingStretches(layout)) {
     // Letters of posts would stand on the lifted surface and not on the post.
@@ -219,7 +225,7 @@ export function isolineNumbers(
     const points = line.points.map(([x, y]): Px => view.at(x, y, height));
     const length = lengthsAlong(points).at(-1) ?? 0;
     if (length < 54) continue;
-    const size: [number, number] = [line.words.length * 7 + 8, 16];
+    const size: [number, number] = [(line.words.length * 7 + 8) * room.textScale, 16 * room.textScale];
     const wanted = [0.2, 0.3, 0.4, 0.5, 0.6, 0.7, 0.8].map((part) => part * length);
     const free = placesAt(points, wanted).filter((_, i) => {
       if (view.lift === 0) return true;
@@ -231,7 +237,7 @@ export function isolineNumbers(
     const order = [3, 2, 4, 1, 5, 0, 6].flatMap((i) => (free[i] === undefined ? [] : [free[i].at]));
     const at = room.place(order, size);
     if (at === undefined) continue;
-    const label = text([at[0], at[1] + 4], line.words, {
+    const label = text([at[0], at[1] + 4 * room.textScale], line.words, {
       class: line.light ? 'number light' : 'number dark',
     });
     label.style.setProperty('stroke', line.fill);

@@ -1,7 +1,7 @@
 import type { LayoutView } from '../../src/service/contract.ts';
 import { toHex } from '../colour/oklab.ts';
 import { wantsLightInk, washAt } from '../colour/ramp.ts';
-import { currentScheme, el, onScheme, svg, tokenColour } from '../page/dom.ts';
+import { currentScheme, el, onScheme, svg, textScale, tokenColour } from '../page/dom.ts';
 import type { DisplayUnit } from '../words/display-unit.ts';
 import { type Bands, bandsFor, niceStep, stepDecimals } from '../words/nice-steps.ts';
 import { fixedText, givenText, numberText, pointText, withUnit } from '../words/number-text.ts';
@@ -270,9 +270,9 @@ export class PlanView {
   #write(view: Projection, size: readonly [number, number]): void {
     const { layout, pins, letter, time } = this.#data;
     const hidden = hiddenBy(this.#locator, view, this.#longest * view.rise);
-    const room = new LabelRoom({ left: 2, right: size[0] - 2, top: 2, bottom: size[1] - 2 });
+    const room = new LabelRoom({ left: 2, right: size[0] - 2, top: 2, bottom: size[1] - 2 }, textScale());
     // The legend stands at the upper right.
-    room.take({ left: size[0] - 350, right: size[0], top: 0, bottom: 40 });
+    room.take({ left: size[0] - 350, right: size[0], top: 0, bottom: 20 + 20 * textScale() });
     room.take({ left: 0, right: 230, top: size[1] - 28, bottom: size[1] });
     room.take({ left: size[0] - 230, right: size[0], top: size[1] - 28, bottom: size[1] });
     this.#overlay.setAttribute('viewBox', `0 0 ${size[0]} ${size[1]}`);

@@ -1,4 +1,4 @@
-import { el, svg } from '../page/dom.ts';
+import { el, svg, textScale } from '../page/dom.ts';
 import type { Asked, Figure } from '../words/answers.ts';
 import type { DisplayUnit } from '../words/display-unit.ts';
 import { niceStep, stepDecimals, ticksTo } from '../words/nice-steps.ts';
@@ -20,10 +20,15 @@ export function answerAxis(
   const limit = asked.under ?? asked.atLeast;
   const shown = [asked.value, limit, bracket?.low, bracket?.high].filter((one) => one !== undefined);
   const top = share ? 100 : Math.max(...shown) * factor * 1.25;
-  const step = niceStep(top, 4.5);
+  const step = niceStep(top, 4.5 / textScale());
   const end = share ? 100 : step * Math.ceil(top / step - 1e-9);
   const x = (value: number) => 6 + ((width - 36) * value * factor) / end;
-  const drawing = svg('svg', { class: 'answer-axis', width, height: 42, 'aria-hidden': 'true' });
+  const drawing = svg('svg', {
+    class: 'answer-axis',
+    width,
+    height: 28 + 14 * textScale(),
+    'aria-hidden': 'true',
+  });
   drawing.append(svg('path', { class: 'hair', d: `M6 13H${width - 30}` }));
   if (limit !== undefined) drawing.append(svg('path', { class: 'limit', d: `M${x(limit).toFixed(1)} 0v26` }));
   if (bracket?.low !== undefined && bracket.high !== undefined) {
@@ -51,7 +56,12 @@ export function answerAxis(
       svg('path', { class: 'tick-line', d: `M${place.toFixed(1)} 26v3` }),
       svg(
         'text',
-        { class: 'tick', x: place.toFixed(1), y: 40, 'text-anchor': i === 0 ? 'start' : 'middle' },
+        {
+          class: 'tick',
+          x: place.toFixed(1),
+          y: 29 + 11 * textScale(),
+          'text-anchor': i === 0 ? 'start' : 'middle',
+        },
         words,
       ),
     );

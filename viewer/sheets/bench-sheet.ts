@@ -42,6 +42,8 @@ export class BenchSheet {
   #plan: PlanView | undefined;
   #strip: StripView | undefined;
   #lift = 0;
+  /** Layout of the answer on screen. */
+  #shown: string | undefined;
 
   constructor(theCase: CaseView, letters: Letters, act: BenchActions) {
     this.#case = theCase;
@@ -89,15 +91,29 @@ export class BenchSheet {
     const words = job === undefined ? 'asking for the answer' : job.doing;
     this.#work.hidden = false;
     const known = this.#work.querySelector('.work-words');
-    if (known !== null) known.textContent = `${words}, ${part}\u00a0%`;
+    if (known !== null) known.textContent = `${words}, ${part}\u00a0%${this.#stillShown()}`;
     else {
       this.#work.replaceChildren(
         this.#line,
-        el('span', { class: 'work-words' }, words),
+        el('span', { class: 'work-words' }, words + this.#stillShown()),
         button('Stop', this.#act.stop, { class: 'quiet small' }),
         el('kbd', {}, 'Esc'),
       );
     }
+  }
+
+  /** The service does not answer: says so where the solve would be, and keeps what is shown. */
+  lost(): void {
+    this.#left.classList.remove('stale');
+    this.#right.classList.remove('stale');
+    if (this.#work.hidden) return;
+    this.#work.replaceChildren(
+      el('span', { class: 'work-words' }, 'waiting for the service to answer again'),
+    );
+  }
+
+  #stillShown(): string {
+    return this.#shown === undefined ? '' : `; ${this.#shown} is still shown`;
   }
 
   /** The solve was stopped before there was an answer. */
@@ -118,6 +134,7 @@ export class BenchSheet {
     const shown = solved.answers.find((one) => one.start === start) ?? solved.answers[0];
     if (shown === undefined) return;
     const { layout } = solved;
+    this.#shown = layout.layout;
     const time = timeUnitFor(layout.longest.value, this.#case.units.time);
     const lengthUnit = this.#case.units.length;
     // Letters are given in the order of the answers, which is the same for all layouts of a case.

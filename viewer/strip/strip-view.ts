@@ -1,5 +1,5 @@
 import type { LayoutView, LoopView } from '../../src/service/contract.ts';
-import { button, el, svg } from '../page/dom.ts';
+import { button, el, svg, textScale } from '../page/dom.ts';
 import { chevronPath, chevrons, dotPlaces, GLYPH_SCALE, glyphSizes } from '../plan/glyphs.ts';
 import { type Px, pathOf } from '../plan/polyline.ts';
 import { catchingStretches, loopsByUse, type Stretch, stretchLength } from '../plan/stretches.ts';
@@ -18,7 +18,6 @@ export interface StripData {
 }
 
 const CURVE = 68;
-const BELOW = 24;
 const LEFT = 34;
 
 /** The walls unrolled: inside is up, x is arc length, one scale for all loops of the layout. */
@@ -99,7 +98,7 @@ export class StripView {
       const drawing = svg('svg', {
         class: 'row',
         width: this.#width,
-        height: above + BELOW,
+        height: above + 10 + 14 * textScale(),
         'aria-hidden': 'true',
       });
       for (const { loop, left } of row.loops) {
@@ -184,7 +183,7 @@ export class StripView {
       parts.push(
         svg(
           'text',
-          { class: 'wall-name', x: middle, y: at.base + 20, 'text-anchor': 'middle' },
+          { class: 'wall-name', x: middle, y: at.base + 8 + 12 * textScale(), 'text-anchor': 'middle' },
           this.#data.letter(name),
         ),
       );
@@ -273,7 +272,12 @@ export class StripView {
     const longest = width / scale;
     const step = niceStep(longest, 4.5);
     const minor = step / 5;
-    const drawing = svg('svg', { class: 'axis', width: this.#width, height: 24, 'aria-hidden': 'true' });
+    const drawing = svg('svg', {
+      class: 'axis',
+      width: this.#width,
+      height: 8 + 16 * textScale(),
+      'aria-hidden': 'true',
+    });
     ticksTo(longest, minor).forEach((s, i) => {
       const x = (LEFT + s * scale).toFixed(1);
       drawing.append(svg('path', { class: 'tick-line', d: `M${x} 1v${i % 5 === 0 ? 5 : 3}` }));
@@ -286,7 +290,12 @@ export class StripView {
       drawing.append(
         svg(
           'text',
-          { class: 'tick', x: LEFT + s * scale, y: 19, 'text-anchor': i === 0 ? 'start' : 'middle' },
+          {
+            class: 'tick',
+            x: LEFT + s * scale,
+            y: 8 + 11 * textScale(),
+            'text-anchor': i === 0 ? 'start' : 'middle',
+          },
           words,
         ),
       );
