@@ -1,5 +1,14 @@
-import { directionAt, nearestParameter, partOf, pointAt } from './curves.ts';
-import type { Curve, Healing, Point } from './domain.ts';
+import {
+  areApart,
+  crossingOfCurves,
+  hull,
+  tangentFrom,
+  touchOfCurves,
+  towards,
+  turnBetween,
+} from './curve-pairs.ts';
+import { nearestParameter, partOf, pointAt } from './curves.ts';
+import type { Healing, Point } from './domain.ts';
 import type { PointIndex } from './point-index.ts';
 import { orient } from './predicates.ts';
 import type { Chord, Strand } from './strands.ts';
@@ -43,6 +52,12 @@ export function comparePair(p: Chord, q: Chord, round: Round): void {
   }
 }
 
+function noteContact(p: Chord, q: Chord, at: Point, round: Round): void {
+  if (p.strand.role !== 'wall' || q.strand.role !== 'wall') return;
+  if (round.healed.some((h) => h.what === 'contact' && h.at[0] === at[0] && h.at[1] === at[1])) return;
+  round.healed.push({ what: 'contact', loop: p.strand.name, at });
+}
+
 function cut(chord: Chord, t: number, vertex: number, round: Round): void {
   if (vertex === chord.a || vertex === chord.b) return;
   const list = round.cuts.get(chord);
@@ -69,11 +84,7 @@ function contact(chord: Chord, v: number, other: Chord, round: Round): boolean {
     t = chord.t0 + close.t * (chord.t1 - chord.t0);
   }
   cut(chord, t, v, round);
-  if (chord.strand.role === 'wall' && other.strand.role === 'wall') {
-    if (!round.healed.some((h) => h.what === 'contact' && h.at[0] === p[0] && h.at[1] === p[1])) {
-      round.healed.push({ what: 'contact', loop: chord.strand.name, at: p });
-    }
-  }
+  noteContact(chord, other, p, round);
   return true;
 }
 
@@ -113,48 +124,18 @@ function cross(p: Chord, q: Chord, curved: boolean, round: Round): boolean {
   return true;
 }
 
-/** Newton's method on A(t) = B(u) from where the chords cross; undefined unless it ends inside both chords' spans. */
-function crossingOfCurves(
-  p: Chord,
-  q: Chord,
-  startT: number,
-  startU: number,
-): { t: number; u: number; at: Point } | undefined {
-  let t = startT;
-  let u = startU;
-  for (let i = 0; i < 30; i++) {
-    const a = pointAt(p.strand.curve, t);
-    const b = pointAt(q.strand.curve, u);
-    const da = directionAt(p.strand.curve, t);
-    const db = directionAt(q.strand.curve, u);
-    const rx = b[0] - a[0];
-    const ry = b[1] - a[1];
-    const det = da[1] * db[0] - da[0] * db[1];
-    const stepT = (ry * db[0] - rx * db[1]) / det;
-    const stepU = (ry * da[0] - rx * da[1]) / det;
-    t += stepT;
-    u += stepU;
-    if (!(t > p.t0 && t < p.t1 && u > q.t0 && u < q.t1)) return undefined;
-    if (Math.abs(stepT) <= 1e-13 * (p.t1 - p.t0) && Math.abs(stepU) <= 1e-13 * (q.t1 - q.t0)) {
-      return { t, u, at: pointAt(p.strand.curve, t) };
-    }
-  }
-  return undefined;
-}
-
-/** Halves the chord with the larger sag where the two stand nearer to each other than their curves may reach. */
+/** Halves the chord with the larger sag where the places that the curves may take up overlap. */
 function keepApart(p: Chord, q: Chord, round: Round): void {
-  const { points } = round;
-  const [pa, pb, qa, qb] = [points.at(p.a), points.at(p.b), points.at(q.a), points.at(q.b)];
-  const gap = crosses(pa, pb, qa, qb)
-    ? 0
-    : Math.min(
-        toSegment(pa, qa, qb).distance,
-        toSegment(pb, qa, qb).distance,
-        toSegment(qa, pa, pb).distance,
-        toSegment(qb, pa, pb).distance,
-      );
-  if (gap <= 2 * (p.sag + q.sag)) halve(p.sag >= q.sag ? p : q, round);
+  if (areApart(hull(p, round.points), hull(q, round.points))) return;
+  const touch = touchOfCurves(p, q, round.tolerance);
+  if (!touch) {
+    halve(p.sag >= q.sag ? p : q, round);
+    return;
+  }
+  const vertex = round.points.add(touch.at);
+  cut(p, touch.t, vertex, round);
+  cut(q, touch.u, vertex, round);
+  noteContact(p, q, touch.at, round);
 }
 
 function halve(chord: Chord, round: Round): void {
@@ -167,8 +148,8 @@ function halve(chord: Chord, round: Round): void {
  * Halves chords that meet in point `v` until each curve stays on its own side near it.
  *
  * Between chord and tangent lies the curve; where both curves bend into the angle between the chords, that angle has
- * to be larger than what they take of it. Curves that touch in `v` keep the ratio of the two for ever; of those only
- * the longer one is halved while the end of the shorter one stands within its reach.
+ * to be larger than what they take of it. Curves that touch in `v` keep the ratio of the two for ever; of those the
+ * longer one is cut as far from `v` as the shorter one ends, if that end stands within its reach.
  */
 function openCorner(p: Chord, q: Chord, v: number, round: Round): void {
   const { points } = round;
@@ -190,23 +171,22 @@ function openCorner(p: Chord, q: Chord, v: number, round: Round): void {
   if (Math.max(lengthP, lengthQ) < 1.2 * Math.min(lengthP, lengthQ)) return;
   const [long, short] = lengthP > lengthQ ? [p, q] : [q, p];
   const end = points.at(short.a === v ? short.b : short.a);
-  if (toSegment(end, points.at(long.a), points.at(long.b)).distance <= 2 * long.sag) halve(long, round);
+  if (toSegment(end, points.at(long.a), points.at(long.b)).distance > 2 * long.sag) return;
+  const t = parameterAtDistance(long, v, at, Math.min(lengthP, lengthQ));
+  cut(long, t, points.add(pointAt(long.strand.curve, t)), round);
 }
 
-function towards(from: Point, to: Point): Point {
-  return [to[0] - from[0], to[1] - from[1]];
-}
-
-function tangentFrom(chord: Chord, v: number): Point {
-  const curve: Curve = chord.strand.curve;
-  const starts = chord.a === v;
-  const d = directionAt(curve, starts ? chord.t0 : chord.t1);
-  return starts ? d : [-d[0], -d[1]];
-}
-
-/** Angle from a to b, counter-clockwise, −π to π. */
-function turnBetween(a: Point, b: Point): number {
-  return Math.atan2(a[0] * b[1] - a[1] * b[0], a[0] * b[0] + a[1] * b[1]);
+/** Parameter on the chord's curve at straight distance `radius` from its end `v`, by bisection. */
+function parameterAtDistance(chord: Chord, v: number, at: Point, radius: number): number {
+  let near = chord.a === v ? chord.t0 : chord.t1;
+  let far = chord.a === v ? chord.t1 : chord.t0;
+  for (let i = 0; i < 52; i++) {
+    const t = (near + far) / 2;
+    const p = pointAt(chord.strand.curve, t);
+    if (Math.hypot(p[0] - at[0], p[1] - at[1]) < radius) near = t;
+    else far = t;
+  }
+  return (near + far) / 2;
 }
 
 function crosses(pa: Point, pb: Point, qa: Point, qb: Point): boolean {

@@ -7,8 +7,10 @@ const shellAngle = (60.5 * Math.PI) / 180;
 /** A corner of the compartment between two segments. */
 export interface SharpCorner {
   readonly vertex: number;
-  /** Radians; the smaller of the angle between the chords and between the curves. */
+  /** Radians; the smaller of the angle between the chords and between the curves: 0 where curves touch. */
   readonly angle: number;
+  /** Radians, between the first chords. */
+  readonly chordAngle: number;
   /** Shortest segment that ends at the vertex, in the length unit. */
   readonly reach: number;
 }
@@ -30,10 +32,10 @@ export function findSharpCorners(mesh: HalfEdgeMesh): SharpCorner[] {
   const found: SharpCorner[] = [];
   for (let e = 0; e < 3 * mesh.triangleCount; e++) {
     if (mesh.segment[e] < 0) continue;
-    const angle = sectorAngle(mesh, e);
+    const { angle, chordAngle } = sector(mesh, e);
     if (angle < shellAngle) {
       const vertex = mesh.from[e];
-      found.push({ vertex, angle, reach: reach.get(vertex) ?? 0 });
+      found.push({ vertex, angle, chordAngle, reach: reach.get(vertex) ?? 0 });
     }
   }
   return found;
@@ -45,16 +47,18 @@ function segmentLength(mesh: HalfEdgeMesh, s: number): number {
   return Math.hypot(mesh.xy[a] - mesh.xy[b], mesh.xy[a + 1] - mesh.xy[b + 1]);
 }
 
-/** Angle at the start of segment half-edge `e` counter-clockwise to the next segment there. */
-function sectorAngle(mesh: HalfEdgeMesh, e: number): number {
-  let sum = 0;
+/** Angles at the start of segment half-edge `e` counter-clockwise to the next segment there. */
+function sector(mesh: HalfEdgeMesh, e: number): { angle: number; chordAngle: number } {
+  let chordAngle = 0;
   let at = e;
   for (;;) {
-    sum += angleAt(mesh, at);
+    chordAngle += angleAt(mesh, at);
     const back = previous(at);
-    if (mesh.segment[back] >= 0) return Math.min(sum, tangentAngle(mesh, e, back, sum));
+    if (mesh.segment[back] >= 0) {
+      return { angle: Math.min(chordAngle, tangentAngle(mesh, e, back, chordAngle)), chordAngle };
+    }
     at = mesh.opposite[back];
-    if (at < 0 || at === e || sum > Math.PI) return sum;
+    if (at < 0 || at === e || chordAngle > Math.PI) return { angle: chordAngle, chordAngle };
   }
 }
 

@@ -4,7 +4,7 @@ import type { HalfEdgeMesh } from './half-edge.ts';
 import type { SizeField } from './size-field.ts';
 
 /** Triangles per area over size squared that refinement makes where only the size asks for them; measured. */
-const trianglesPerSize = 3.2;
+const trianglesPerSize = 5;
 /** Triangles per degree of sharpness and doubling of the distance from the corner; measured on wedges. */
 const perDegreeAndShell = 86;
 /** Places at which a size field is asked for one estimate. */
@@ -74,10 +74,12 @@ export function requireFeasible(
   maxNodes: number,
 ): number {
   let sharp = 0;
-  for (const { vertex, angle, reach } of corners) {
+  for (const { vertex, angle, chordAngle, reach } of corners) {
     const [x, y] = [mesh.xy[2 * vertex], mesh.xy[2 * vertex + 1]];
     const h = typeof size === 'number' ? size : size(x, y);
-    const degrees = (angle * 180) / Math.PI;
+    // Between curves the angle shrinks with the pieces, from that of the first chords to that of the curves.
+    const open = angle + (chordAngle - angle) * Math.min(1, h / reach);
+    const degrees = (open * 180) / Math.PI;
     const count = (perDegreeAndShell / degrees) * Math.max(1, Math.log2(reach / h));
     if (count > 2 * maxNodes) {
       throw new MesherError(
