@@ -1,3 +1,5 @@
+import type { PhysicsNumbers } from './physics-numbers.ts';
+
 /** A number that the program stands behind: `low` and `high` are absent where nothing does (CASE.md). */
 export interface Answer {
   readonly value: number;
@@ -25,9 +27,17 @@ export interface Answers {
   readonly layout: string;
   readonly start: string;
   readonly units: { readonly length: string; readonly time: string } | 'none';
+  /** As found by the solver, however the drift is stated; `warnings` says where it fails. */
   readonly reversible: boolean;
+  /** With loss: of leaving or being lost, whichever is first. */
   readonly mean: Answer;
+  /** By exit, and with loss `lost`; they sum to 1. */
   readonly shares: Readonly<Record<string, Answer>>;
+  /**
+   * By exit, per unit depth, in length²/time: without drift and loss, at a depth that is the same everywhere, and only
+   * of exits that touch no other (METHODS 3).
+   */
+  readonly conductance?: Readonly<Record<string, Answer>>;
   readonly pins: Readonly<
     Record<string, { readonly mean: Answer; readonly shares: Readonly<Record<string, Answer>> }>
   >;
@@ -44,7 +54,11 @@ export interface Answers {
     readonly minAngle: number;
     readonly chordError: number;
   };
-  readonly numbers: { readonly roundingFloor: number };
+  readonly numbers: PhysicsNumbers & {
+    readonly roundingFloor: number;
+    /** Edges of the mesh with a rate below zero. */
+    readonly negativeRates: number;
+  };
   readonly healed: readonly object[];
   readonly taken: readonly string[];
   readonly leftOut: readonly string[];

@@ -1,6 +1,15 @@
-/** What every answer carries with it: what the numbers assume, and what they must not be used for alone. */
-export const cautions: readonly string[] = [
-  'Flat or shallow compartment: with a flow, depth-averaged speed holds only where depth²/D is much shorter than length/speed.',
+import type { Case } from '../case/case.ts';
+
+/** What every answer of a case carries with it: what the numbers assume, and what they must not be used for alone. */
+export function cautionsOf({ particle }: Case): readonly string[] {
+  const drifts = [...(particle.drift ? [particle.drift] : []), ...particle.driftIn.values()];
+  return drifts.some(({ kind }) => kind === 'components') ? [ofFlow, ...ofAll] : ofAll;
+}
+
+const ofFlow =
+  'With a flow: a speed averaged over the depth holds only where depth²/D is much shorter than length/speed.';
+
+const ofAll: readonly string[] = [
   'Independent point particles, released sharply at t = 0; a catching wall never fills and never lets go.',
   'D holds for its temperature, medium and particle size.',
   'The figures come from the meshed drawing; errors of inputs are not in them.',

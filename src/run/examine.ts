@@ -38,7 +38,8 @@ export function examineLayout(theCase: Case, layout: Layout, options: ExamineOpt
     });
     assemble(mesh, domain.problem(mesh.regionSets), stop ? { stop } : {});
     const places = locate(mesh);
-    for (const start of theCase.starts.filter(isAnswerable)) startWeights(theCase, domain, mesh, places, start);
+    for (const start of theCase.starts.filter(isAnswerable))
+      startWeights(theCase, domain, mesh, places, start);
     for (const { name, at } of theCase.pins) {
       startWeights(theCase, domain, mesh, places, { kind: 'point', name, at }, 'pins');
     }

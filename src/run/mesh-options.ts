@@ -9,11 +9,18 @@ import {
   type SizeSource,
 } from '../../mesher/index.ts';
 import type { LayoutDomain } from '../case/layout-domain.ts';
+import { narrowGaps } from './narrow-gaps.ts';
 
-/** How fine the first mesh of a layout is. Lengths are relative to what an even mesh of `evenNodes` would have. */
+/** How fine the first mesh of a layout is. Lengths are relative to the even size. */
 export const firstMesh = {
-  /** Nodes an even mesh of the compartment would have; grading adds to them. */
+  /**
+   * The even size is the edge of this many nodes' equilateral triangles. It is the longest edge allowed, so that the
+   * mesh comes out with about twice as many; grading adds to them.
+   */
   evenNodes: 6000,
+  /** Longest edge ÷ width of a narrow part of the compartment, and ÷ the even size at the least. */
+  perGap: 1 / 20,
+  leastInGap: 1 / 2,
   /** Size where the kind of wall changes, ÷ the even size: values there converge like the size itself (METHODS 4). */
   atJunction: 1 / 256,
   /** Size along curved wall ÷ its radius of curvature. */
@@ -25,7 +32,8 @@ export const firstMesh = {
 } as const;
 
 /**
- * Sizes for the first mesh of a layout: even, graded towards places where the kind of wall changes and along bends.
+ * Sizes for the first mesh of a layout: even, graded towards places where the kind of wall changes, along bends and
+ * in narrow parts.
  *
  * @param scale multiplies every size; 2 for a quick coarse mesh
  */
@@ -36,6 +44,9 @@ export function meshOptions(layout: LayoutDomain, maxNodes: number, scale = 1): 
   const sources: SizeSource[] = layout.junctions.map((at) => ({ at, size: even * firstMesh.atJunction }));
   for (const chain of wallChains(layout.domain)) {
     for (const { curve } of chain.pieces) sources.push(...bends(curve, even, scale));
+  }
+  for (const { at, width } of narrowGaps(layout.domain, even / (scale * firstMesh.perGap))) {
+    sources.push({ at, size: Math.max(scale * firstMesh.perGap * width, firstMesh.leastInGap * even) });
   }
   return { maxSize: even, sources, growth: firstMesh.growth, maxNodes };
 }

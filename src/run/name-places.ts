@@ -1,8 +1,10 @@
-import { MesherError } from '../../mesher/index.ts';
+import { MesherError, type Point } from '../../mesher/index.ts';
 import { SolverError } from '../../solver/index.ts';
 import type { Case, Layout } from '../case/case.ts';
 import { CaseError } from '../case/errors.ts';
+import { joinKey } from '../case/key-path.ts';
 import type { LayoutDomain } from '../case/layout-domain.ts';
+import { placeWords } from './physics-warnings.ts';
 
 /**
  * Runs work on a layout; what mesher or solver refuse becomes a {@link CaseError} that says which layout and, by
@@ -15,9 +17,9 @@ export function inCaseTerms<T>(theCase: Case, layout: Layout, domain: LayoutDoma
     if (error instanceof MesherError) {
       throw new CaseError(
         error.code,
-        error.what,
+        asWritten(theCase, error.what, error.where.at),
         {
-          ...(error.where.at && { at: error.where.at }),
+          ...(error.where.at && { at: writtenPlaces(theCase, error.where.at) }),
           key: loopKey(theCase, error.where.loops?.[0]),
         },
         error.remedy,
@@ -29,14 +31,46 @@ export function inCaseTerms<T>(theCase: Case, layout: Layout, domain: LayoutDoma
       const walls = names.length > 0 ? ` (its walls: ${names.join(', ')})` : '';
       throw new CaseError(
         error.code,
-        `${error.what}${walls}`,
-        { ...(error.where.at && { at: error.where.at }), key: `layouts.${layout.name}` },
+        `${asWritten(theCase, error.what, error.where.at)}${walls}`,
+        {
+          ...(error.where.at && { at: writtenPlaces(theCase, error.where.at) }),
+          key: physicsKey(theCase, error.code) ?? joinKey('layouts', layout.name),
+        },
         error.remedy,
         error,
       );
     }
     throw error;
   }
+}
+
+/** Places as the case writes them, y downwards where it does. */
+function writtenPlaces({ drawing }: Case, at: readonly Point[]): readonly Point[] {
+  return drawing.writtenDown ? at.map(([x, y]) => [x, 0 - y]) : at;
+}
+
+/** A message of a kernel with its places in print: as the case writes them, four digits. */
+function asWritten(theCase: Case, what: string, at: readonly Point[] = []): string {
+  return at.reduce((text, place) => text.replace(`(${place[0]}, ${place[1]})`, placeWords(theCase, place)), what);
+}
+
+/** Where the case states what the solver finds wrong at some place; undefined for what lies in the layout. */
+function physicsKey({ particle }: Case, code: string): string | undefined {
+  const stated = (name: 'diffusion' | 'drift' | 'loss'): string =>
+    particle[`${name}In`].size > 0 ? 'particle' : `particle.${name}`;
+  switch (code) {
+    case 'DIFFUSION_NOT_POSITIVE':
+      return stated('diffusion');
+    case 'DRIFT_NOT_FINITE':
+      return stated('drift');
+    case 'LOSS_NEGATIVE':
+      return stated('loss');
+    case 'TENSOR_CONVENTION':
+      return 'particle.noise';
+    case 'DEPTH_NOT_POSITIVE':
+      return 'drawing.depth';
+  }
+  return undefined;
 }
 
 function loopKey(theCase: Case, loop: string | undefined): string {

@@ -1,4 +1,4 @@
-import type { Mesh, Locator, Point } from '../../mesher/index.ts';
+import type { Locator, Mesh, Point } from '../../mesher/index.ts';
 import { evenStart, pointStart, spotStart } from '../../solver/index.ts';
 import type { Case, Start } from '../case/case.ts';
 import { CaseError } from '../case/errors.ts';
