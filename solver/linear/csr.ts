@@ -1,3 +1,6 @@
+import type { Hooks } from '../../mesher/index.ts';
+import { stopIfAsked } from './stopping.ts';
+
 /** A sparse square matrix by rows (compressed sparse rows), columns ascending within a row. */
 export interface Csr {
   readonly size: number;
@@ -11,6 +14,7 @@ export interface Csr {
  * Builds rows from pairs: pair p puts `forth[p]` at (a, b) and `back[p]` at (b, a). No pair may occur twice.
  *
  * @param a, b row numbers per pair, below `size`; a pair with a negative number is left out
+ * @throws {SolverError} SOLVING_STOPPED
  */
 export function csrOfPairs(
   size: number,
@@ -18,6 +22,7 @@ export function csrOfPairs(
   b: Int32Array,
   forth: Float64Array,
   back: Float64Array,
+  hooks: Hooks = {},
 ): Csr {
   const start = new Int32Array(size + 1);
   for (let p = 0; p < a.length; p++) {
@@ -26,6 +31,7 @@ export function csrOfPairs(
     start[b[p] + 1]++;
   }
   for (let i = 0; i < size; i++) start[i + 1] += start[i];
+  stopIfAsked(hooks);
   const column = new Int32Array(start[size]);
   const value = new Float64Array(start[size]);
   const next = start.slice(0, size);
@@ -38,6 +44,7 @@ export function csrOfPairs(
     column[backAt] = a[p];
     value[backAt] = back[p];
   }
+  stopIfAsked(hooks);
   for (let i = 0; i < size; i++) sortRow(column, value, start[i], start[i + 1]);
   return { size, start, column, value };
 }

@@ -1,4 +1,6 @@
+import type { Hooks } from '../../mesher/index.ts';
 import type { Csr } from './csr.ts';
+import { stopIfAsked } from './stopping.ts';
 
 /**
  * An elimination order with its tree. Tree nodes are in postorder; node t eliminates the rows
@@ -26,9 +28,10 @@ type Cut = 'long' | 'short' | 'circle';
  *
  * @param rates the graph (symmetric pattern)
  * @param xy 2 coordinates per row
+ * @throws {SolverError} SOLVING_STOPPED
  * Source: George 1973; circles: Miller, Teng, Thurston & Vavasis 1997.
  */
-export function dissect(rates: Csr, xy: Float64Array): Dissection {
+export function dissect(rates: Csr, xy: Float64Array, hooks: Hooks = {}): Dissection {
   const size = rates.size;
   const order = new Int32Array(size);
   for (let i = 0; i < size; i++) order[i] = i;
@@ -44,6 +47,7 @@ export function dissect(rates: Csr, xy: Float64Array): Dissection {
   };
   const cut = (from: number, to: number): number => {
     if (to - from <= leafSize) return push(from, []);
+    if (to - from > 1000) stopIfAsked(hooks);
     const middle = (from + to) >> 1;
     const smaller = chooseCut(work, from, to);
     const [leftEnd, rightEnd] = moveSeparator(work, from, middle, to, smaller, spare);

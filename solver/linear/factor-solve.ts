@@ -1,12 +1,21 @@
+import type { Hooks } from '../../mesher/index.ts';
 import type { Factor } from './multifrontal.ts';
+import { stopIfAsked } from './stopping.ts';
 
 /**
  * x ← A⁻¹ x, or A⁻ᵀ x, for a block of right-hand sides, in place: up the tree, then down.
  *
  * @param x size × width, right-hand side r of row i at x[i·width + r]
+ * @throws {SolverError} SOLVING_STOPPED
  * Source: Duff & Reid 1983 (solution along the assembly tree).
  */
-export function solveWithFactor(factor: Factor, x: Float64Array, width: number, transposed: boolean): void {
+export function solveWithFactor(
+  factor: Factor,
+  x: Float64Array,
+  width: number,
+  transposed: boolean,
+  hooks: Hooks = {},
+): void {
   const { order, size } = factor.fronts;
   const y = new Float64Array(size * width);
   for (let q = 0; q < size; q++) {
@@ -15,11 +24,11 @@ export function solveWithFactor(factor: Factor, x: Float64Array, width: number, 
   const up = transposed ? factor.upper : factor.lower;
   const down = transposed ? factor.lower : factor.upper;
   if (width === 1) {
-    sweepUp(factor, up, y);
-    sweepDown(factor, down, y);
+    sweepUp(factor, up, y, hooks);
+    sweepDown(factor, down, y, hooks);
   } else {
-    sweepUpBlock(factor, up, y, width);
-    sweepDownBlock(factor, down, y, width);
+    sweepUpBlock(factor, up, y, width, hooks);
+    sweepDownBlock(factor, down, y, width, hooks);
   }
   for (let q = 0; q < size; q++) {
     for (let r = 0; r < width; r++) x[order[q] * width + r] = y[q * width + r];
@@ -27,10 +36,11 @@ export function solveWithFactor(factor: Factor, x: Float64Array, width: number, 
 }
 
 /** y_k += entries_kj y_j along every column, earlier columns first. */
-function sweepUp(factor: Factor, entries: Float64Array, y: Float64Array): void {
+function sweepUp(factor: Factor, entries: Float64Array, y: Float64Array, hooks: Hooks): void {
   const { count, pivotStart, borderStart, border, factorStart, largest } = factor.fronts;
   const local = new Float64Array(largest);
   for (let t = 0; t < count; t++) {
+    if ((t & 511) === 0) stopIfAsked(hooks);
     const first = pivotStart[t];
     const pivots = pivotStart[t + 1] - first;
     const begin = borderStart[t];
@@ -48,11 +58,12 @@ function sweepUp(factor: Factor, entries: Float64Array, y: Float64Array): void {
 }
 
 /** y_j = y_j / d_j + Σ entries_kj y_k, later columns first. */
-function sweepDown(factor: Factor, entries: Float64Array, y: Float64Array): void {
+function sweepDown(factor: Factor, entries: Float64Array, y: Float64Array, hooks: Hooks): void {
   const { inversePivot } = factor;
   const { count, pivotStart, borderStart, border, factorStart, largest } = factor.fronts;
   const local = new Float64Array(largest);
   for (let t = count - 1; t >= 0; t--) {
+    if ((t & 511) === 0) stopIfAsked(hooks);
     const first = pivotStart[t];
     const pivots = pivotStart[t + 1] - first;
     const begin = borderStart[t];
@@ -69,10 +80,17 @@ function sweepDown(factor: Factor, entries: Float64Array, y: Float64Array): void
   }
 }
 
-function sweepUpBlock(factor: Factor, entries: Float64Array, y: Float64Array, width: number): void {
+function sweepUpBlock(
+  factor: Factor,
+  entries: Float64Array,
+  y: Float64Array,
+  width: number,
+  hooks: Hooks,
+): void {
   const { count, pivotStart, borderStart, border, factorStart, largest } = factor.fronts;
   const local = new Float64Array(largest * width);
   for (let t = 0; t < count; t++) {
+    if ((t & 511) === 0) stopIfAsked(hooks);
     const first = pivotStart[t] * width;
     const pivots = pivotStart[t + 1] - pivotStart[t];
     const begin = borderStart[t];
@@ -96,11 +114,18 @@ function sweepUpBlock(factor: Factor, entries: Float64Array, y: Float64Array, wi
   }
 }
 
-function sweepDownBlock(factor: Factor, entries: Float64Array, y: Float64Array, width: number): void {
+function sweepDownBlock(
+  factor: Factor,
+  entries: Float64Array,
+  y: Float64Array,
+  width: number,
+  hooks: Hooks,
+): void {
   const { inversePivot } = factor;
   const { count, pivotStart, borderStart, border, factorStart, largest } = factor.fronts;
   const local = new Float64Array(largest * width);
   for (let t = count - 1; t >= 0; t--) {
+    if ((t & 511) === 0) stopIfAsked(hooks);
     const first = pivotStart[t];
     const pivots = pivotStart[t + 1] - first;
     const begin = borderStart[t];

@@ -1,5 +1,7 @@
+import type { Hooks } from '../../mesher/index.ts';
 import type { Csr } from './csr.ts';
 import type { Dissection } from './dissection.ts';
+import { stopIfAsked } from './stopping.ts';
 
 /** The shape of the multifrontal factor: every front's border, and the room it all takes. */
 export interface Fronts {
@@ -22,7 +24,7 @@ export interface Fronts {
 }
 
 /** Finds the fronts' borders from the leaves up: what pivots and children touch, less the pivots. */
-export function planFronts(rates: Csr, dissection: Dissection): Fronts {
+export function planFronts(rates: Csr, dissection: Dissection, hooks: Hooks = {}): Fronts {
   const { order, pivotStart, parent } = dissection;
   const { start, column, size } = rates;
   const count = parent.length;
@@ -38,6 +40,7 @@ export function planFronts(rates: Csr, dissection: Dissection): Fronts {
   let waiting = 0;
   let most = 0;
   for (let t = 0; t < count; t++) {
+    if ((t & 1023) === 0) stopIfAsked(hooks);
     const end = pivotStart[t + 1];
     const begin = borderStart[t];
     let length = begin;

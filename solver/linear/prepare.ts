@@ -54,15 +54,17 @@ export function prepare(system: System, options: PrepareOptions = {}): Prepared 
 
 function prepareAnew(system: System, options: PrepareOptions): Prepared {
   if (options.preconditioner === 'multigrid') return withMultigrid(system, options);
+  stopIfAsked(options);
   const { nodes } = system.mesh;
   const xy = new Float64Array(2 * system.size);
   for (let i = 0; i < system.size; i++) {
     xy[2 * i] = nodes[2 * system.nodeOf[i]];
     xy[2 * i + 1] = nodes[2 * system.nodeOf[i] + 1];
   }
-  const dissection = dissect(system.rates, xy);
   stopIfAsked(options);
-  const fronts = planFronts(system.rates, dissection);
+  const dissection = dissect(system.rates, xy, options);
+  stopIfAsked(options);
+  const fronts = planFronts(system.rates, dissection, options);
   stopIfAsked(options);
   const tooLarge = bytesNeeded(fronts) > (options.maxBytes ?? factorDefaults.maxBytes);
   const mayTurn = options.preconditioner !== 'factor' && system.symmetric && !system.psi;
@@ -75,7 +77,12 @@ function withFactor(system: System, fronts: Fronts, options: PrepareOptions): Pr
   const solve =
     (transposed: boolean) =>
     (rhs: Float64Array, watched: IterationOptions & Hooks = {}) =>
-      iterate({ ...system, transposed }, rhs, (y) => solveWithFactor(factor, y, 1, transposed), watched);
+      iterate(
+        { ...system, transposed },
+        rhs,
+        (y) => solveWithFactor(factor, y, 1, transposed, watched),
+        watched,
+      );
   return {
     ...{ system, preconditioner: 'factor', solve: solve(false), solveAdjoint: solve(!system.symmetric) },
     solveMany: (rhs, watched = {}) => {
@@ -118,7 +125,7 @@ function throughFactor(factor: Factor, rhs: readonly Float64Array[], hooks: Hook
       const b = rhs[first + r];
       for (let i = 0; i < size; i++) block[i * width + r] = b[i];
     }
-    solveWithFactor(factor, block, width, false);
+    solveWithFactor(factor, block, width, false, hooks);
     for (let r = 0; r < width; r++) {
       const x = new Float64Array(size);
       for (let i = 0; i < size; i++) x[i] = block[i * width + r];

@@ -31,24 +31,24 @@ const largestPsiRange = 600;
  */
 export function assemble(given: Mesh, problem: Problem, hooks: Hooks = {}): System {
   requireTensorConvention(problem, given);
-  const { mesh, nodeOf: nodeBefore } = orderAlongCurve(given);
+  const { mesh, nodeOf: nodeBefore } = orderAlongCurve(given, hooks);
   stopIfAsked(hooks);
   const terms = mediumTerms(problem, sizeOf(mesh.nodes));
-  const edges = listEdges(mesh.triangles, nodeBefore.length);
+  const edges = listEdges(mesh.triangles, nodeBefore.length, hooks);
   stopIfAsked(hooks);
   const triangleOf = segmentTriangles(mesh, edges);
-  const weights = edgeWeightsOf(mesh, terms, edges);
+  const weights = edgeWeightsOf(mesh, terms, edges, hooks);
   stopIfAsked(hooks);
   const bridges = permeableBridges(mesh, problem, terms, triangleOf);
   const absorbing = absorbingNodes(mesh, problem);
   const partly = partlyAbsorbingRates(mesh, problem, terms, triangleOf);
-  const mass = lumpedIntegral(mesh, (region) => terms[region].mass);
-  const volume = volumeRates(mesh, terms);
+  const mass = lumpedIntegral(mesh, (region) => terms[region].mass, hooks);
+  const volume = volumeRates(mesh, terms, hooks);
   checkWayOut(mesh, edges, bridges, absorbing, partly, volume);
   stopIfAsked(hooks);
 
-  const drift = sideDrift(mesh, terms, edges);
-  const tested = drift ? testReversibility(mesh, edges, drift, bridges.pairs) : undefined;
+  const drift = sideDrift(mesh, terms, edges, hooks);
+  const tested = drift ? testReversibility(mesh, edges, drift, bridges.pairs, hooks) : undefined;
   const plain = drift && (!tested?.reversible || tested.range > largestPsiRange);
   const psi = tested?.reversible ? tested.psi : undefined;
   const links = plain
@@ -58,8 +58,10 @@ export function assemble(given: Mesh, problem: Problem, hooks: Hooks = {}): Syst
   stopIfAsked(hooks);
   const free = numberFreeNodes(mesh, absorbing);
   const sinks = collectSinks({ links, absorbing, partly, volume, rowScale }, free.freeOf);
+  stopIfAsked(hooks);
   const load = Float64Array.from(free.nodeOf, (node) => mass[node] * (rowScale ? rowScale[node] : 1));
-  const matrix = matrixOf(links, free, sinks);
+  const matrix = matrixOf(links, free, sinks, hooks);
+  stopIfAsked(hooks);
   return {
     ...{ mesh: given, exitCount: problem.exitCount, ...matrix, load, symmetric: !plain },
     ...numberedAsGiven(given, nodeBefore, free.nodeOf),
@@ -72,11 +74,14 @@ export function assemble(given: Mesh, problem: Problem, hooks: Hooks = {}): Syst
 }
 
 /** Rates, slack and diagonal of the free rows. */
-function matrixOf(links: Links, free: FreeNodes, sinks: System['sinks']) {
+function matrixOf(links: Links, free: FreeNodes, sinks: System['sinks'], hooks: Hooks) {
   const { freeOf } = free;
   const size = free.nodeOf.length;
   const row = (node: number): number => freeOf[node];
-  const rates = csrOfPairs(size, links.first.map(row), links.second.map(row), links.forth, links.back);
+  const first = links.first.map(row);
+  const second = links.second.map(row);
+  stopIfAsked(hooks);
+  const rates = csrOfPairs(size, first, second, links.forth, links.back, hooks);
   const slack = new Float64Array(size);
   for (let s = 0; s < sinks.row.length; s++) slack[sinks.row[s]] += sinks.rate[s];
   const diagonal = slack.slice();
@@ -111,17 +116,17 @@ function numberedAsGiven(given: Mesh, nodeBefore: Int32Array, nodeOfRow: Int32Ar
   return { nodeOf, freeOf };
 }
 
-function volumeRates(mesh: Mesh, terms: readonly MediumTerms[]): VolumeRate[] {
+function volumeRates(mesh: Mesh, terms: readonly MediumTerms[], hooks: Hooks): VolumeRate[] {
   const volume: VolumeRate[] = [];
   if (terms.some((medium) => medium.loss)) {
-    volume.push({ exit: -1, rate: lumpedIntegral(mesh, (region) => terms[region].loss) });
+    volume.push({ exit: -1, rate: lumpedIntegral(mesh, (region) => terms[region].loss, hooks) });
   }
   for (const exit of new Set(terms.flatMap((medium) => (medium.floor ? [medium.floor.exit] : [])))) {
     const rateOf = (region: number) => {
       const floor = terms[region].floor;
       return floor?.exit === exit ? floor.rate : undefined;
     };
-    volume.push({ exit, rate: lumpedIntegral(mesh, rateOf) });
+    volume.push({ exit, rate: lumpedIntegral(mesh, rateOf, hooks) });
   }
   return volume;
 }

@@ -1,4 +1,5 @@
-import type { Mesh } from '../../mesher/index.ts';
+import type { Hooks, Mesh } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 
 /** A mesh renumbered so that near things lie near each other in memory, and the way back. */
 export interface OrderedMesh {
@@ -12,12 +13,13 @@ const cellsBits = 12;
 /**
  * Numbers the nodes along a Hilbert curve and sorts the triangles by their lowest node.
  *
+ * @throws {SolverError} SOLVING_STOPPED
  * Source: Hilbert 1891; for meshes see Bader 2013, Space-Filling Curves (recalled). The bench of assembly pays for it.
  */
-export function orderAlongCurve(mesh: Mesh): OrderedMesh {
+export function orderAlongCurve(mesh: Mesh, hooks: Hooks = {}): OrderedMesh {
   const { nodes, triangles, regionSet } = mesh;
   const count = nodes.length / 2;
-  const nodeOf = sortByKey(hilbertKeys(nodes), 2 * cellsBits);
+  const nodeOf = sortByKey(hilbertKeys(nodes, hooks), 2 * cellsBits);
   const rank = new Int32Array(count);
   for (let i = 0; i < count; i++) rank[nodeOf[i]] = i;
   const moved = new Float64Array(2 * count);
@@ -25,11 +27,13 @@ export function orderAlongCurve(mesh: Mesh): OrderedMesh {
     moved[2 * i] = nodes[2 * nodeOf[i]];
     moved[2 * i + 1] = nodes[2 * nodeOf[i] + 1];
   }
+  stopIfAsked(hooks);
   const lowest = new Int32Array(regionSet.length);
   for (let t = 0; t < regionSet.length; t++) {
     lowest[t] = Math.min(rank[triangles[3 * t]], rank[triangles[3 * t + 1]], rank[triangles[3 * t + 2]]);
   }
   const triangleOf = sortByKey(lowest, 32 - Math.clz32(count));
+  stopIfAsked(hooks);
   const sortedTriangles = new Int32Array(triangles.length);
   const sortedRegion = new Int32Array(regionSet.length);
   for (let t = 0; t < regionSet.length; t++) {
@@ -45,7 +49,7 @@ export function orderAlongCurve(mesh: Mesh): OrderedMesh {
 }
 
 /** Place of every node along the curve through 4096 × 4096 cells. */
-function hilbertKeys(nodes: Float64Array): Int32Array {
+function hilbertKeys(nodes: Float64Array, hooks: Hooks): Int32Array {
   let lowX = Number.POSITIVE_INFINITY;
   let lowY = Number.POSITIVE_INFINITY;
   let highX = Number.NEGATIVE_INFINITY;
@@ -60,6 +64,7 @@ function hilbertKeys(nodes: Float64Array): Int32Array {
   const scale = (cells - 1) / (Math.max(highX - lowX, highY - lowY) || 1);
   const keys = new Int32Array(nodes.length / 2);
   for (let i = 0; i < keys.length; i++) {
+    if ((i & pollMask) === 0) stopIfAsked(hooks);
     let x = ((nodes[2 * i] - lowX) * scale) | 0;
     let y = ((nodes[2 * i + 1] - lowY) * scale) | 0;
     let key = 0;

@@ -1,4 +1,5 @@
-import type { Mesh } from '../../mesher/index.ts';
+import type { Hooks, Mesh } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 import { type DriftAlong, driftNotFinite, type MediumTerms, valueAt } from '../problem/medium-terms.ts';
 import type { EdgeList } from './edges.ts';
 import { edgePoints, edgeWeights } from './quadrature.ts';
@@ -16,9 +17,14 @@ export interface SideDrift {
  * difference to 5 points is kept as their (over-)estimated error.
  *
  * @returns undefined when no medium in use has a drift
- * @throws {SolverError} DRIFT_NOT_FINITE, DIFFUSION_NOT_POSITIVE
+ * @throws {SolverError} DRIFT_NOT_FINITE, DIFFUSION_NOT_POSITIVE, SOLVING_STOPPED
  */
-export function sideDrift(mesh: Mesh, terms: readonly MediumTerms[], edges: EdgeList): SideDrift | undefined {
+export function sideDrift(
+  mesh: Mesh,
+  terms: readonly MediumTerms[],
+  edges: EdgeList,
+  hooks: Hooks = {},
+): SideDrift | undefined {
   const { nodes, triangles, regionSet } = mesh;
   if (!terms.some((medium) => medium.drift)) return undefined;
   const beta = new Float64Array(triangles.length);
@@ -26,6 +32,7 @@ export function sideDrift(mesh: Mesh, terms: readonly MediumTerms[], edges: Edge
   const firstSide = new Int32Array(edges.count).fill(-1);
   const out = new Float64Array(4);
   for (let side = 0; side < triangles.length; side++) {
+    if ((side & (pollMask >> 3)) === 0) stopIfAsked(hooks);
     const medium = regionSet[(side / 3) | 0];
     const along = terms[medium].drift;
     const edge = edges.ofSide[side];

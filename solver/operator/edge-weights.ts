@@ -1,4 +1,5 @@
-import type { Mesh } from '../../mesher/index.ts';
+import type { Hooks, Mesh } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 import { type MediumTerms, valueAt } from '../problem/medium-terms.ts';
 import type { Coefficient, Tensor } from '../problem/problem.ts';
 import { tensorAt } from '../problem/tensor-terms.ts';
@@ -18,10 +19,15 @@ export interface EdgeWeights {
  * k = h D^α seen from the triangle's region and averaged harmonically along the edge (exact for the flux in one
  * dimension); for a tensor −∫∇φ_i·hD∇φ_j. On a Delaunay mesh (in the metric D⁻¹) without encroached walls all are ≥ 0.
  *
- * @throws {SolverError} DIFFUSION_NOT_POSITIVE, DEPTH_NOT_POSITIVE
+ * @throws {SolverError} DIFFUSION_NOT_POSITIVE, DEPTH_NOT_POSITIVE, SOLVING_STOPPED
  * Source: Xu & Zikatanov 1999 (edge averages); METHODS 4.
  */
-export function edgeWeightsOf(mesh: Mesh, terms: readonly MediumTerms[], edges: EdgeList): EdgeWeights {
+export function edgeWeightsOf(
+  mesh: Mesh,
+  terms: readonly MediumTerms[],
+  edges: EdgeList,
+  hooks: Hooks = {},
+): EdgeWeights {
   const { nodes, triangles, regionSet } = mesh;
   const ofEdge = new Float64Array(edges.count);
   const ofSide = new Float64Array(triangles.length);
@@ -30,6 +36,7 @@ export function edgeWeightsOf(mesh: Mesh, terms: readonly MediumTerms[], edges: 
   const mean = new Float64Array(edges.count);
   const meanOf = new Int32Array(edges.count).fill(-1);
   for (let side = 0; side < triangles.length; side++) {
+    if ((side & pollMask) === 0) stopIfAsked(hooks);
     const t = (side / 3) | 0;
     const medium = regionSet[t];
     const { conductivity, tensor } = terms[medium];

@@ -1,3 +1,6 @@
+import type { Hooks } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
+
 /** The edges of a mesh, each once, and the edge on every side of every triangle. */
 export interface EdgeList {
   readonly count: number;
@@ -13,8 +16,9 @@ export interface EdgeList {
  *
  * @param triangles 3 node numbers per triangle
  * @param nodeCount numbers are below this
+ * @throws {SolverError} SOLVING_STOPPED
  */
-export function listEdges(triangles: Int32Array, nodeCount: number): EdgeList {
+export function listEdges(triangles: Int32Array, nodeCount: number, hooks: Hooks = {}): EdgeList {
   const sides = triangles.length;
   const start = new Int32Array(nodeCount + 1);
   const low = (side: number): number => Math.min(triangles[sideStart(side)], triangles[sideEnd(side)]);
@@ -23,6 +27,7 @@ export function listEdges(triangles: Int32Array, nodeCount: number): EdgeList {
   const sideAt = new Int32Array(sides);
   const next = start.slice(0, nodeCount);
   for (let side = 0; side < sides; side++) sideAt[next[low(side)]++] = side;
+  stopIfAsked(hooks);
 
   const first = new Int32Array(sides);
   const second = new Int32Array(sides);
@@ -30,6 +35,7 @@ export function listEdges(triangles: Int32Array, nodeCount: number): EdgeList {
   const lastEdgeTo = new Int32Array(nodeCount).fill(-1);
   let count = 0;
   for (let node = 0; node < nodeCount; node++) {
+    if ((node & pollMask) === 0) stopIfAsked(hooks);
     const firstOfNode = count;
     for (let q = start[node]; q < start[node + 1]; q++) {
       const side = sideAt[q];

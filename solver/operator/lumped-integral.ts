@@ -1,4 +1,5 @@
-import type { Mesh } from '../../mesher/index.ts';
+import type { Hooks, Mesh } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 import { valueAt } from '../problem/medium-terms.ts';
 import type { Coefficient } from '../problem/problem.ts';
 import { trianglePoints, triangleWeights } from './quadrature.ts';
@@ -20,16 +21,18 @@ export function triangleArea(nodes: Float64Array, triangles: Int32Array, t: numb
  * load of the mean exit time; with c = loss the lumped loss (METHODS 4).
  *
  * @param coefficientOf c in a triangle with the given `regionSet` number; undefined for none
- * @throws {SolverError} what the coefficient throws
+ * @throws {SolverError} what the coefficient throws, SOLVING_STOPPED
  */
 export function lumpedIntegral(
   mesh: Mesh,
   coefficientOf: (regionSet: number) => Coefficient | undefined,
+  hooks: Hooks = {},
 ): Float64Array {
   const { nodes, triangles, regionSet } = mesh;
   const coefficients = mesh.regionSets.map((_, r) => coefficientOf(r));
   const integral = new Float64Array(nodes.length / 2);
   for (let t = 0; t < regionSet.length; t++) {
+    if ((t & pollMask) === 0) stopIfAsked(hooks);
     const c = coefficients[regionSet[t]];
     if (!c) continue;
     const area = triangleArea(nodes, triangles, t);

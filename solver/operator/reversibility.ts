@@ -1,4 +1,5 @@
-import type { Mesh, Point } from '../../mesher/index.ts';
+import type { Hooks, Mesh, Point } from '../../mesher/index.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 import type { SideDrift } from './drift.ts';
 import type { EdgeList } from './edges.ts';
 
@@ -29,11 +30,13 @@ export function testReversibility(
   edges: EdgeList,
   drift: SideDrift,
   bridges: Int32Array,
+  hooks: Hooks = {},
 ): Reversibility {
   const { beta, slack } = drift;
   const { triangles } = mesh;
   const sideOf = new Int32Array(edges.count).fill(-1);
   for (let side = 0; side < triangles.length; side++) {
+    if ((side & pollMask) === 0) stopIfAsked(hooks);
     const edge = edges.ofSide[side];
     const known = sideOf[edge];
     if (known < 0) sideOf[edge] = side;
@@ -63,7 +66,7 @@ export function testReversibility(
     edgeBeta[e] = beta[sideOf[e]];
     edgeSlack[e] = slack[sideOf[e]];
   }
-  return sumAlongTree(mesh, edges, edgeBeta, edgeSlack, bridges);
+  return sumAlongTree(mesh, edges, edgeBeta, edgeSlack, bridges, hooks);
 }
 
 function failed(around: Cycle['around'], work: number, at: Point): Reversibility {
@@ -86,6 +89,7 @@ function sumAlongTree(
   edgeBeta: Float64Array,
   edgeSlack: Float64Array,
   bridges: Int32Array,
+  hooks: Hooks,
 ): Reversibility {
   const nodeCount = mesh.nodes.length / 2;
   const links = edges.count + bridges.length / 2;
@@ -118,6 +122,7 @@ function sumAlongTree(
     queue[0] = root;
     let length = 1;
     for (let head = 0; head < length; head++) {
+      if ((head & pollMask) === 0) stopIfAsked(hooks);
       const node = queue[head];
       for (let p = start[node]; p < start[node + 1]; p++) {
         const link = incident[p];
