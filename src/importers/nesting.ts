@@ -12,7 +12,7 @@ export interface Outlined {
 }
 
 /** Chords per curved piece: only for telling which shape lies in which. */
-const chords = 48;
+const chords = 16;
 
 export function outlined(shape: FoundShape): Outlined {
   let made: readonly Point[] | undefined;

@@ -21,7 +21,10 @@ export interface PathReading {
  * Source: W3C, SVG 1.1 (second edition, 2011), chapter 8.3.
  */
 export function readPathData(text: string): PathReading {
-  const path = svgpath(text);
+  const repeated = withRepeatedLetters(text);
+  if (repeated === undefined)
+    return { subpaths: [], problem: 'one A draws too many arcs; repeat the letter' };
+  const path = svgpath(repeated);
   const found = (path as unknown as { err: string }).err;
   const subpaths: Subpath[] = [];
   let curves: Curve[] = [];
@@ -87,7 +90,7 @@ export function readPathData(text: string): PathReading {
       }
     });
   end(false);
-  if (found) return { subpaths, problem: whereInText(found, text) };
+  if (found) return { subpaths, problem: whereInText(found, repeated) };
   if (!finite) return { subpaths: [], problem: 'the path has a number that is too large' };
   return { subpaths };
 }
@@ -105,6 +108,45 @@ function raised(from: Point, control: Point, to: Point): Curve | undefined {
     p[1] + (2 / 3) * (control[1] - p[1]),
   ];
   return cubic(from, toward(from), toward(to), to);
+}
+
+/** Longest run of numbers behind one letter that is handed on as it is, in characters. */
+const longRun = 4000;
+const longestArcs = 100_000;
+
+/** Numbers that each letter takes; A is not among them as its flags may be written without a space. */
+const counts: Readonly<Record<string, number>> = { m: 2, l: 2, h: 1, v: 1, c: 6, s: 4, q: 4, t: 2 };
+
+/**
+ * The same path with its letters repeated within long runs: the library's time grows with the square of a run.
+ * A run with something else than numbers stays as it is, for the library to say where.
+ */
+function withRepeatedLetters(text: string): string | undefined {
+  if (text.length <= longRun) return text;
+  let tooLong = false;
+  const repeated = text.replace(
+    /([a-df-zA-DF-Z])([^a-df-zA-DF-Z]*)/g,
+    (run: string, letter: string, rest: string) => {
+      if (run.length <= longRun) return run;
+      const count = counts[letter.toLowerCase()];
+      if (count === undefined) {
+        tooLong ||= run.length > longestArcs;
+        return run;
+      }
+      if (!/^[-+\d.eE\s,]*$/.test(rest)) return run;
+      const numbers = rest.match(/[-+]?(?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d+)?/g) ?? [];
+      const parts: string[] = [];
+      let name = letter;
+      for (let i = 0; i < numbers.length; i += count) {
+        parts.push(name, ...numbers.slice(i, i + count));
+        // After the first pair a moveto goes on as lineto.
+        if (i === 0 && letter === 'M') name = 'L';
+        if (i === 0 && letter === 'm') name = 'l';
+      }
+      return `${parts.join(' ')} `;
+    },
+  );
+  return tooLong ? undefined : repeated;
 }
 
 function whereInText(message: string, text: string): string {

@@ -32,8 +32,9 @@ export function tellRoles(shapes: readonly FoundShape[], outline?: FoundShape): 
   const others: { shape: FoundShape; why: string }[] = [];
   for (const each of closed) {
     if (each === proposal) continue;
-    const around = sideOf(proposal, each);
-    if (sideOf(each, proposal) !== 'outside' || around === 'across') holes.push(each.shape);
+    const side = sideOf(each, proposal);
+    const around = side === 'outside' ? sideOf(proposal, each) : 'outside';
+    if (side !== 'outside' || around === 'across') holes.push(each.shape);
     else if (around === 'inside') others.push({ shape: each.shape, why: 'around the outline' });
     else others.push({ shape: each.shape, why: 'outside the outline' });
   }

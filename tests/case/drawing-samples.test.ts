@@ -61,7 +61,9 @@ describe.each(Object.entries(samples))('%s', (name, { area, outline, layouts }) 
     expect(able.length).toBeGreaterThan(0);
     for (const layout of able) {
       const { exits, pieces, problem } = layoutDomain(theCase, layout);
-      const catching = new Set([...pieces.values()].flatMap(({ wall }) => wall ?? []));
+      const catching = new Set(
+        [...pieces.values()].flatMap(({ wall, physics }) => ('exit' in physics ? (wall ?? []) : [])),
+      );
       expect([...catching].sort()).toEqual([...exits].sort());
       expect(problem([[]]).walls.size).toBe(pieces.size);
     }

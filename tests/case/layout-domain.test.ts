@@ -210,6 +210,24 @@ it('finds where the border of a region with its own D meets walls, and no border
   ]);
 });
 
+it('finds contacts on the bulge of a curve beyond its chord, and with a Bézier curve', () => {
+  // A half disc of radius 1 at (1, 0): x = 1.6 meets it at y = ±0.8.
+  const cap = { y: 'up', outline: { path: 'M 0 -1 H 1 A 1 1 0 0 1 1 1 H 0 Z' } };
+  const right = { right: { rectangle: [1.6, -5, 5, 5] } };
+  expect(sorted(cut({ drawing: { ...cap, regions: right }, ownD: { 0: 3 } }).junctions)).toEqual([
+    [1.6, -0.8],
+    [1.6, 0.8],
+  ]);
+  // x(t) = 3t − 3t² bulges to 0.75; y(t) = 2t² (3 − 2t) − 1 … at t = ½ ± 0.2 x is 0.63.
+  const bezier = { y: 'up', outline: { path: 'M 0 -1 C 1 -1 1 1 0 1 L -1 1 V -1 Z' } };
+  const y = (t: number) => 2 * t * t * (3 - 2 * t) - 1;
+  const found = cut({
+    drawing: { ...bezier, regions: { right: { rectangle: [0.63, -5, 5, 5] } } },
+    ownD: { 0: 3 },
+  });
+  expect(sorted(found.junctions)).toEqual([0.3, 0.7].map((t) => [0.63, Number(y(t).toFixed(9))]));
+});
+
 it('lets the last listed region with its own D decide over a place', () => {
   const drawing = {
     outline: { rectangle: [0, 0, 9, 9] },

@@ -112,6 +112,19 @@ it('measures the length of an elliptic arc as the complete elliptic integral giv
   );
 });
 
+it('reads long runs of points behind one letter like the same points with a letter each', () => {
+  const points = Array.from({ length: 3000 }, (_, i) => [i % 7, -((i * 0.37) % 5)] as const);
+  const plain = points.map(([x, y], i) => `${i === 0 ? 'M' : 'L'} ${x} ${y}`).join(' ');
+  // Numbers run together as programs write them: "3-1.11" and ".5.25".
+  const run = `M${points.map(([x, y]) => `${x}${y === 0 ? ' 0' : `-${-y}`.replace('--', '-')}`).join(' ')}`;
+  const moves = `m${points.map(([x, y]) => `${x},${y}`).join(' ')}`;
+  expect(run.length).toBeGreaterThan(4000);
+  expect(readPathData(run)).toEqual(readPathData(plain));
+  expect(readPathData(moves).subpaths[0]?.curves).toHaveLength(2999);
+  expect(readPathData(moves).subpaths[0]?.curves.at(-1)?.to[0]).toBe(points.reduce((sum, [x]) => sum + x, 0));
+  expect(readPathData(`${run} 1 !`).problem).toContain('"!"');
+});
+
 it.each([
   ['M0 0 L1 1 x 3', 'character 11, "x 3"'],
   ['L 1 1', 'does not begin with M'],
