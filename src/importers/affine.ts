@@ -66,20 +66,14 @@ function mapArc(m: Matrix, arc: Curve & { kind: 'arc' }, from: Point, to: Point)
       [c * v[0] - s * u[0], c * v[1] - s * u[1]],
     ];
   }
-  let r1 = Math.hypot(...u);
-  let r2 = Math.hypot(...v);
-  // A circle moved, turned and scaled is a circle: rounding must not make an ellipse of it.
-  if (Math.abs(r1 - r2) <= 1e-14 * r1) {
-    r1 = (r1 + r2) / 2;
-    r2 = r1;
-  }
   const hand = u[0] * v[1] - u[1] * v[0] < 0 ? -1 : 1;
   return {
     kind: 'arc',
     from,
     to,
     centre: mapPoint(m, arc.centre),
-    radii: [r1, r2],
+    // Of a circle under a similar map both come out equal to the digit: the same products in the same order.
+    radii: [Math.hypot(...u), Math.hypot(...v)],
     turned: Math.atan2(u[1], u[0]),
     start: hand * (arc.start - tau),
     sweep: hand * arc.sweep,
