@@ -1,5 +1,6 @@
 import { incircle, orient2d } from 'robust-predicates';
 import { grownInt, type HalfEdgeMesh } from './half-edge.ts';
+import { rightAngleSlack } from './slack.ts';
 
 /** Error bounds of the plain floating-point determinants (Shewchuk 1997, table of the adaptive predicates). */
 const circleBound = (10 + 96 * 2 ** -53) * 2 ** -53;
@@ -152,7 +153,12 @@ export class Cavity {
       if (turn <= bound && turn >= -bound) turn = -orient2d(ax, ay, bx, by, x, y);
       const s = segment[k];
       if (s >= 0) {
-        if (turn <= 0 || (ax - x) * (bx - x) + (ay - y) * (by - y) < 0) hit.push(s);
+        const ux = ax - x;
+        const uy = ay - y;
+        const wx = bx - x;
+        const wy = by - y;
+        const least = rightAngleSlack * (ux * ux + uy * uy + wx * wx + wy * wy);
+        if (turn <= 0 || ux * wx + uy * wy < least) hit.push(s);
       } else if (turn <= 0) {
         star = false;
       }

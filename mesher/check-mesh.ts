@@ -1,5 +1,6 @@
 import type { Domain } from './domain.ts';
 import type { Mesh } from './mesh.ts';
+import { connectedPieces } from './pieces.ts';
 import { inCircle, orient } from './predicates.ts';
 import { fixedEdges, oppositeHalfEdges } from './quality.ts';
 
@@ -130,7 +131,7 @@ function checkEuler(mesh: Mesh, opposite: Int32Array, broken: string[]): void {
   for (const o of opposite) if (o >= 0) inner++;
   const edges = inner / 2 + mesh.segments.length / 2;
   const loops = countLoops(mesh, broken);
-  const pieces = countPieces(opposite);
+  const pieces = connectedPieces(mesh).count;
   if (nodeCount - edges + faces !== 2 * pieces - loops) {
     broken.push(`Euler: ${nodeCount} − ${edges} + ${faces} is not 2·${pieces} − ${loops}`);
   }
@@ -153,26 +154,6 @@ function countLoops(mesh: Mesh, broken: string[]): number {
     }
   }
   return loops;
-}
-
-function countPieces(opposite: Int32Array): number {
-  const seen = new Uint8Array(opposite.length / 3);
-  let pieces = 0;
-  for (let start = 0; start < seen.length; start++) {
-    if (seen[start]) continue;
-    pieces++;
-    const stack = [start];
-    seen[start] = 1;
-    for (let t = stack.pop(); t !== undefined; t = stack.pop()) {
-      for (let e = 3 * t; e < 3 * t + 3; e++) {
-        const u = opposite[e] < 0 ? t : Math.floor(opposite[e] / 3);
-        if (seen[u]) continue;
-        seen[u] = 1;
-        stack.push(u);
-      }
-    }
-  }
-  return pieces;
 }
 
 function checkTags(mesh: Mesh, domain: Domain, broken: string[]): void {

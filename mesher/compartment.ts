@@ -145,31 +145,45 @@ function findRegionSets(
   return { sets, setOf };
 }
 
-/** The triangles wound round once, without the box; half-edges to the outside become −1. */
+/**
+ * The triangles wound round once, without the box; half-edges to the outside become −1.
+ *
+ * Triangles start from their lowest vertex and are in order of their vertices, which are in drawing order: so the
+ * same drawing turned or scaled is refined in the same order, whatever the sweep made of it.
+ */
 function keep(whole: HalfEdgeMesh, winding: Int32Array, setOf: Int32Array): HalfEdgeMesh {
-  const number = new Int32Array(whole.triangleCount).fill(-1);
-  let count = 0;
-  for (let t = 0; t < number.length; t++) if (winding[t] === 1) number[t] = count++;
+  const { from, opposite, segment } = whole;
+  const inside: number[] = [];
+  for (let t = 0; t < whole.triangleCount; t++) if (winding[t] === 1) inside.push(lowestCorner(from, t));
+  inside.sort((e, o) => from[e] - from[o] || from[next(e)] - from[next(o)]);
   const mesh = new HalfEdgeMesh(whole.curves, whole.tags);
-  mesh.reserve(whole.vertexCount, count, whole.segmentCount);
+  mesh.reserve(whole.vertexCount, inside.length, whole.segmentCount);
   mesh.vertexCount = whole.vertexCount - 4;
-  mesh.triangleCount = count;
+  mesh.triangleCount = inside.length;
   mesh.xy.set(whole.xy.subarray(0, 2 * mesh.vertexCount));
   for (let s = 0; s < whole.segmentCount; s++) {
     const [t0, t1] = [whole.segmentSpan[2 * s], whole.segmentSpan[2 * s + 1]];
     mesh.addSegment(whole.segmentCurve[s], t0, t1, whole.segmentFrom[s], whole.segmentTo[s]);
   }
-  for (let t = 0; t < number.length; t++) {
-    if (number[t] < 0) continue;
-    mesh.regionSet[number[t]] = setOf[t];
-    for (let i = 0; i < 3; i++) {
-      const e = 3 * number[t] + i;
-      const o = whole.opposite[3 * t + i];
-      const other = o < 0 ? -1 : number[Math.floor(o / 3)];
-      mesh.from[e] = whole.from[3 * t + i];
-      mesh.segment[e] = whole.segment[3 * t + i];
-      mesh.opposite[e] = other < 0 ? -1 : 3 * other + (o % 3);
-    }
+  const number = new Int32Array(3 * whole.triangleCount).fill(-1);
+  inside.forEach((first, t) => {
+    let e = first;
+    for (let i = 0; i < 3; i++, e = next(e)) number[e] = 3 * t + i;
+    mesh.regionSet[t] = setOf[Math.floor(first / 3)];
+  });
+  for (let e = 0; e < number.length; e++) {
+    const to = number[e];
+    if (to < 0) continue;
+    mesh.from[to] = from[e];
+    mesh.segment[to] = segment[e];
+    mesh.opposite[to] = opposite[e] < 0 ? -1 : number[opposite[e]];
   }
   return mesh;
+}
+
+/** The half-edge of triangle t that starts from its vertex with the smallest number. */
+function lowestCorner(from: Int32Array, t: number): number {
+  let lowest = 3 * t;
+  for (let e = 3 * t + 1; e < 3 * t + 3; e++) if (from[e] < from[lowest]) lowest = e;
+  return lowest;
 }

@@ -15,6 +15,7 @@ export type MesherCode =
   | 'TOO_MANY_TRIANGLES'
   | 'TOO_MANY_CORNERS'
   | 'TRIANGULATION_FAILED'
+  | 'MESH_NOT_FROM_HERE'
   | 'MESHING_STOPPED';
 
 /** Where a geometry is at fault: places in the drawing's own coordinates, and the loops by name. */

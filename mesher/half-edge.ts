@@ -53,6 +53,24 @@ export class HalfEdgeMesh {
     }
   }
 
+  /** The same triangulation in arrays of its own, without spare room. */
+  copy(): HalfEdgeMesh {
+    const mesh = new HalfEdgeMesh(this.curves, this.tags);
+    mesh.vertexCount = this.vertexCount;
+    mesh.triangleCount = this.triangleCount;
+    mesh.segmentCount = this.segmentCount;
+    mesh.xy = this.xy.slice(0, 2 * this.vertexCount);
+    mesh.from = this.from.slice(0, 3 * this.triangleCount);
+    mesh.opposite = this.opposite.slice(0, 3 * this.triangleCount);
+    mesh.segment = this.segment.slice(0, 3 * this.triangleCount);
+    mesh.regionSet = this.regionSet.slice(0, this.triangleCount);
+    mesh.segmentCurve = this.segmentCurve.slice(0, this.segmentCount);
+    mesh.segmentSpan = this.segmentSpan.slice(0, 2 * this.segmentCount);
+    mesh.segmentFrom = this.segmentFrom.slice(0, this.segmentCount);
+    mesh.segmentTo = this.segmentTo.slice(0, this.segmentCount);
+    return mesh;
+  }
+
   addVertex(x: number, y: number): number {
     const v = this.vertexCount;
     this.reserve(v + 1, 0, 0);

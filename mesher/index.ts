@@ -16,6 +16,7 @@ export type { Hooks } from './hooks.ts';
 export { type Located, type Locator, locate, type NearestWall } from './locate.ts';
 export { chainLength, enclosedArea } from './measure.ts';
 export type { Mesh } from './mesh.ts';
-export { meshDefaults, meshDomain } from './mesh-domain.ts';
+export { meshDefaults, meshDomain, remesh } from './mesh-domain.ts';
 export type { MeshOptions, SizeSource } from './options.ts';
+export { type ConnectedPieces, connectedPieces } from './pieces.ts';
 export { type MeshQuality, meshQuality } from './quality.ts';

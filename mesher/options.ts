@@ -21,4 +21,6 @@ export interface MeshOptions extends Hooks {
   readonly minAngle?: number;
   /** Refused above this; default 500 000. */
   readonly maxNodes?: number;
+  /** Sweeps of guarded smoothing at the end: better angles on the whole, at about the cost of meshing; default 0. */
+  readonly smoothing?: number;
 }

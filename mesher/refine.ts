@@ -7,6 +7,7 @@ import { type HalfEdgeMesh, next, previous } from './half-edge.ts';
 import type { Hooks } from './hooks.ts';
 import { IntQueue } from './queue.ts';
 import type { SizeField } from './size-field.ts';
+import { tieSlack } from './slack.ts';
 import { SegmentSplitter } from './split-segments.ts';
 
 /** What refinement works towards. */
@@ -63,7 +64,7 @@ class Refinement {
     };
     this.#walls = new SegmentSplitter(mesh, goal, onFan, () => this.#poll());
     const angle = (goal.minAngle * Math.PI) / 180;
-    this.#sinSquare = Math.sin(angle) ** 2;
+    this.#sinSquare = Math.sin(angle) ** 2 * (1 + tieSlack);
     // Height of the off-centre over the shortest edge, per its length; a little below the one that just passes.
     this.#offCentre = 0.475 / Math.tan(angle / 2);
   }
@@ -137,7 +138,7 @@ class Refinement {
     const shortest = Math.min(ab, ac, bc);
     const middle = ab + ac + bc - longest - shortest;
     const twice = ux * wy - uy * wx;
-    let state = longest > h * h ? badSize : 0;
+    let state = longest > h * h * (1 + tieSlack) ? badSize : 0;
     if (twice * twice < this.#sinSquare * longest * middle) state |= badAngle;
     return state;
   }
@@ -213,7 +214,7 @@ class Refinement {
       const dx = xy[a] - xy[b];
       const dy = xy[a + 1] - xy[b + 1];
       const square = dx * dx + dy * dy;
-      if (square < least) {
+      if (square < least * (1 - tieSlack)) {
         least = square;
         best = e;
       }

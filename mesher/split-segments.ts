@@ -5,6 +5,7 @@ import { grownInt, type HalfEdgeMesh, next, previous } from './half-edge.ts';
 import { orient } from './predicates.ts';
 import { IntQueue } from './queue.ts';
 import type { RefineGoal } from './refine.ts';
+import { rightAngleSlack, tieSlack } from './slack.ts';
 import { splitPlace } from './split-place.ts';
 
 /** Told of every fan of new triangles. */
@@ -142,9 +143,11 @@ export class SegmentSplitter {
     const a = 2 * from[e];
     const b = 2 * from[next(e)];
     const c = 2 * from[previous(e)];
-    const x = xy[c];
-    const y = xy[c + 1];
-    return (xy[a] - x) * (xy[b] - x) + (xy[a + 1] - y) * (xy[b + 1] - y) < 0;
+    const ax = xy[a] - xy[c];
+    const ay = xy[a + 1] - xy[c + 1];
+    const bx = xy[b] - xy[c];
+    const by = xy[b + 1] - xy[c + 1];
+    return ax * bx + ay * by < rightAngleSlack * (ax * ax + ay * ay + bx * bx + by * by);
   }
 
   #requestIfNeeded(s: number): void {
@@ -160,7 +163,7 @@ export class SegmentSplitter {
     const b = 2 * segmentTo[s];
     const { size } = this.#goal;
     const h = typeof size === 'number' ? size : size((xy[a] + xy[b]) / 2, (xy[a + 1] + xy[b + 1]) / 2);
-    return (xy[a] - xy[b]) ** 2 + (xy[a + 1] - xy[b + 1]) ** 2 > h * h;
+    return (xy[a] - xy[b]) ** 2 + (xy[a + 1] - xy[b + 1]) ** 2 > h * h * (1 + tieSlack);
   }
 
   /**
