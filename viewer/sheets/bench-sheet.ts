@@ -91,7 +91,9 @@ export class BenchSheet {
     const words = job === undefined ? 'asking for the answer' : job.doing;
     this.#work.hidden = false;
     const known = this.#work.querySelector('.work-words');
-    if (known !== null) known.textContent = `${words}, ${part}\u00a0%${this.#stillShown()}`;
+    // After a stop or a lost connection other words stand there, without the line.
+    if (known !== null && this.#line.isConnected)
+      known.textContent = `${words}, ${part}\u00a0%${this.#stillShown()}`;
     else {
       this.#work.replaceChildren(
         this.#line,
@@ -104,12 +106,9 @@ export class BenchSheet {
 
   /** The service does not answer: says so where the solve would be, and keeps what is shown. */
   lost(): void {
-    this.#left.classList.remove('stale');
-    this.#right.classList.remove('stale');
     if (this.#work.hidden) return;
-    this.#work.replaceChildren(
-      el('span', { class: 'work-words' }, 'waiting for the service to answer again'),
-    );
+    const words = `waiting for the service to answer again${this.#stillShown()}`;
+    this.#work.replaceChildren(el('span', { class: 'work-words' }, words));
   }
 
   #stillShown(): string {
@@ -119,7 +118,7 @@ export class BenchSheet {
   /** The solve was stopped before there was an answer. */
   stopped(words: string): void {
     this.#work.replaceChildren(
-      el('span', { class: 'work-words' }, words),
+      el('span', { class: 'work-words' }, words + this.#stillShown()),
       button('Solve it', this.#act.solve, { class: 'quiet small' }),
     );
   }
