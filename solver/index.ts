@@ -6,7 +6,14 @@ export { meanExitTime } from './answers/mean-exit-time.ts';
 export { exitTimeMoments, standardDeviation, timeByExit, timeInRegion } from './answers/moments.ts';
 export { roundingFloor } from './answers/rounding-floor.ts';
 export { evenStart, pointStart, spotStart } from './answers/starts.ts';
-export { type Survival, type SurvivalOptions, survival, survivalDefaults } from './answers/survival.ts';
+export {
+  type Arrivals,
+  arrivals,
+  type Survival,
+  type SurvivalOptions,
+  survival,
+  survivalDefaults,
+} from './answers/survival.ts';
 export { type SolverCode, SolverError, type SolverWhere } from './errors.ts';
 export type { Csr } from './linear/csr.ts';
 export { type IterationOptions, iterationDefaults, type Solution } from './linear/iteration.ts';

@@ -16,31 +16,37 @@ export function shifted(system: System, s: number): System {
 }
 
 /**
- * An M-orthonormal basis of the Krylov space of (A + sM)⁻¹M from the constant 1, grown step by step, and the operator
+ * An M-orthonormal basis of the Krylov space of (A + sM)⁻¹M from a vector g, grown step by step, and the operator
  * −L seen in it. Lanczos when the rates are symmetric, Arnoldi when not; both orthogonalised in full.
  *
  * Source: shift-and-invert Lanczos for exponentials: Moret & Novati 2004; van den Eshof & Hochbruck 2006; METHODS 5.
  */
 export class KrylovBasis {
   readonly vectors: Float64Array[] = [];
-  /** M-norm of the constant 1. */
+  /** M-norm of g. */
   readonly norm: number;
   /** True when the space can grow no further: the answers are exact to rounding. */
   complete = false;
   private readonly columns: number[][] = [];
   private readonly system: System;
   private readonly shift: number;
-  private readonly killed: System;
+  private killed: System | undefined;
   private next: Float64Array;
 
-  constructor(system: System, shift: number) {
+  constructor(system: System, shift: number, g: Float64Array) {
     this.system = system;
     this.shift = shift;
     this.killed = shifted(system, shift);
     let sum = 0;
-    for (let i = 0; i < system.size; i++) sum += system.load[i];
+    for (let i = 0; i < system.size; i++) sum += system.load[i] * g[i] * g[i];
     this.norm = Math.sqrt(sum);
-    this.next = new Float64Array(system.size).fill(1 / this.norm);
+    this.complete = this.norm === 0;
+    this.next = g.map((v) => v / this.norm);
+  }
+
+  /** Gives the factor's memory back; the basis grows no more. */
+  release(): void {
+    this.killed = undefined;
   }
 
   /**
@@ -51,6 +57,7 @@ export class KrylovBasis {
   grow(hooks: Hooks): void {
     stopIfAsked(hooks);
     const { load, size } = this.system;
+    if (!this.killed) throw new Error('the basis was released');
     this.vectors.push(this.next);
     const rhs = this.next.map((v, i) => v * load[i]);
     const solution = prepare(this.killed, hooks).solve(rhs, hooks);
@@ -85,10 +92,11 @@ export class KrylovBasis {
     return this.system.symmetric ? Matrix.add(h, h.transpose()).mul(0.5) : h;
   }
 
-  /** e^(tL)1 in the basis, as a function of t: entries of the vectors. */
+  /** e^(tL)g in the basis, as a function of t: entries of the vectors. */
   exponential(): (t: number) => Float64Array {
     const h = this.projected();
     const m = h.rows;
+    if (m === 0) return () => new Float64Array(0);
     if (this.system.symmetric) {
       const { realEigenvalues, eigenvectorMatrix: y } = new EigenvalueDecomposition(h, {
         assumeSymmetric: true,

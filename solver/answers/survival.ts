@@ -2,15 +2,16 @@ import type { Hooks } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 import { solveOrThrow } from '../linear/prepare.ts';
 import type { System } from '../operator/system.ts';
+import { valueFromStart } from './fields.ts';
 import { KrylovBasis } from './krylov-basis.ts';
 
 /** How far the survival is carried. */
 export interface SurvivalOptions extends Hooks {
-  /** Relative error wanted of the times to `remaining`; default 1e-6. */
+  /** Relative error wanted of what is watched; default 1e-6. */
   readonly tolerance?: number;
-  /** Shares remaining whose times are watched; default ½, 0.1, 0.05, 0.01. */
+  /** Shares of the final value still to come, whose times are watched; default ½, 0.1, 0.05, 0.01. */
   readonly remaining?: readonly number[];
-  /** Times at which the share remaining is watched, > 0. */
+  /** Times at which the value is watched, > 0. */
   readonly times?: readonly number[];
   readonly maxSteps?: number;
 }
@@ -38,8 +39,8 @@ export interface Survival {
 
 /**
  * Survival by one Krylov basis from the constant 1, shift 20 ÷ mean exit time, grown until what is watched moved less
- * than a tenth of the tolerance over three steps, for each of the starts. Times below h²/D at the walls are not resolved by
- * the mesh.
+ * than a tenth of the tolerance over three steps, for each of the starts. Times below h²/D at the walls are not
+ * resolved by the mesh.
  *
  * @param starts weights per mesh node; what is watched is watched for each
  * @throws {SolverError} NOT_CONVERGED, SOLVING_STOPPED
@@ -50,55 +51,111 @@ export function survival(
   starts: readonly Float64Array[],
   options: SurvivalOptions = {},
 ): Survival {
+  const one = new Float64Array(system.size).fill(1);
+  const { share, scale, basis } = decayOf(system, one, starts, options);
+  const exponential = basis.exponential();
+  return {
+    at: (weights, t) => share(weights)(t),
+    field: (t) => {
+      const c = exponential(Math.max(0, t));
+      const out = new Float64Array(system.freeOf.length);
+      for (let i = 0; i < system.size; i++) {
+        let sum = 0;
+        for (let j = 0; j < c.length; j++) sum += c[j] * basis.vectors[j][i];
+        out[system.nodeOf[i]] = t <= 0 ? 1 : Math.min(1, Math.max(0, sum));
+      }
+      return out;
+    },
+    timeTo: (weights, remaining) => timeUntil(share(weights), remaining, scale),
+    decayTime: 1 / basis.slowestRate(),
+    steps: basis.vectors.length,
+  };
+}
+
+/** How an exit fills: the share that has left through it by time t. */
+export interface Arrivals {
+  readonly by: (weights: Float64Array, t: number) => number;
+  /** Time by which the share `arrived` of all has left through this exit; undefined if it never does. */
+  readonly timeTo: (weights: Float64Array, arrived: number) => number | undefined;
+  readonly steps: number;
+}
+
+/**
+ * Arrivals at one exit by time t: F = p − e^(tL)p, with a Krylov basis from the exit's share field p.
+ *
+ * @param field the exit's field from `exitShares`, one entry per mesh node
+ * @param starts weights per mesh node, watched as in {@link survival}
+ * @throws {SolverError} NOT_CONVERGED, SOLVING_STOPPED
+ * Source: METHODS 3 and 5.
+ */
+export function arrivals(
+  system: System,
+  field: Float64Array,
+  starts: readonly Float64Array[],
+  options: SurvivalOptions = {},
+): Arrivals {
+  const free = Float64Array.from(system.nodeOf, (node) => field[node]);
+  const { share, scale, basis } = decayOf(system, free, starts, options);
+  return {
+    by: (weights, t) => valueFromStart(weights, field) - share(weights)(t),
+    timeTo: (weights, arrived) => {
+      const total = valueFromStart(weights, field);
+      if (arrived >= total) return undefined;
+      return timeUntil(share(weights), total - arrived, scale);
+    },
+    steps: basis.vectors.length,
+  };
+}
+
+interface Decay {
+  /** t ↦ ∫ρ e^(tL)g for a start ρ. */
+  readonly share: (weights: Float64Array) => (t: number) => number;
+  /** The compartment's mean exit time. */
+  readonly scale: number;
+  readonly basis: KrylovBasis;
+}
+
+/** e^(tL)g, g given on the free nodes. */
+function decayOf(
+  system: System,
+  g: Float64Array,
+  starts: readonly Float64Array[],
+  options: SurvivalOptions,
+): Decay {
   const { tolerance, remaining, times, maxSteps } = { ...survivalDefaults, ...options };
-  const u = solveOrThrow(system, system.load, options);
-  const mean = weightedMean(system.load, u);
-  const basis = new KrylovBasis(system, 20 / mean);
-  const projections = starts.map(() => [] as number[]);
+  const scale = weightedMean(system.load, solveOrThrow(system, system.load, options));
+  const basis = new KrylovBasis(system, 20 / scale, g);
+  const onto = starts.map(() => [] as number[]);
+  const totals = starts.map((weights) => project(system, weights, g));
   let before: number[] | undefined;
   let still = 0;
-  while (still < 3) {
+  while (still < 3 && !basis.complete) {
     if (basis.vectors.length >= maxSteps) throw notSettled(maxSteps);
     basis.grow(options);
     const newest = basis.vectors[basis.vectors.length - 1];
     starts.forEach((weights, s) => {
-      projections[s].push(project(system, weights, newest));
+      onto[s].push(project(system, weights, newest));
     });
     options.progress?.(Math.min(0.99, basis.vectors.length / 40));
-    if (basis.complete) break;
     const exponential = basis.exponential();
-    const now = projections.flatMap((onto) => {
-      const share = (t: number): number => combine(onto, exponential(t));
-      return [...remaining.map((left) => timeUntil(share, left, mean)), ...times.map(share)];
+    const now = onto.flatMap((projections, s) => {
+      const share = (t: number): number => combine(projections, exponential(t));
+      return [
+        ...remaining.map((left) => timeUntil(share, left * totals[s], scale)),
+        ...times.map((t) => share(t)),
+      ];
     });
     still = before && settled(before, now, tolerance / 10) ? still + 1 : 0;
     before = now;
   }
-  return answersFrom(system, basis, mean);
-}
-
-function answersFrom(system: System, basis: KrylovBasis, mean: number): Survival {
+  basis.release();
   const exponential = basis.exponential();
-  const shareFrom = (weights: Float64Array): ((t: number) => number) => {
-    const onto = basis.vectors.map((v) => project(system, weights, v));
-    return (t) => (t <= 0 ? inside(system, weights) : combine(onto, exponential(t)));
+  const share = (weights: Float64Array): ((t: number) => number) => {
+    const projections = basis.vectors.map((v) => project(system, weights, v));
+    const atOnce = project(system, weights, g);
+    return (t) => (t <= 0 ? atOnce : combine(projections, exponential(t)));
   };
-  return {
-    at: (weights, t) => shareFrom(weights)(t),
-    field: (t) => {
-      const c = t <= 0 ? undefined : exponential(t);
-      const out = new Float64Array(system.freeOf.length);
-      for (let i = 0; i < system.size; i++) {
-        let sum = c ? 0 : 1;
-        if (c) for (let j = 0; j < c.length; j++) sum += c[j] * basis.vectors[j][i];
-        out[system.nodeOf[i]] = Math.min(1, Math.max(0, sum));
-      }
-      return out;
-    },
-    timeTo: (weights, remaining) => timeUntil(shareFrom(weights), remaining, mean),
-    decayTime: 1 / basis.slowestRate(),
-    steps: basis.vectors.length,
-  };
+  return { share, scale, basis };
 }
 
 function weightedMean(load: Float64Array, u: Float64Array): number {
@@ -111,13 +168,7 @@ function weightedMean(load: Float64Array, u: Float64Array): number {
   return sum / mass;
 }
 
-/** Part of a start that does not lie on absorbing nodes. */
-function inside(system: System, weights: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < system.size; i++) sum += weights[system.nodeOf[i]];
-  return sum;
-}
-
+/** Σ over the free nodes of weights × v. */
 function project(system: System, weights: Float64Array, v: Float64Array): number {
   let sum = 0;
   for (let i = 0; i < system.size; i++) sum += weights[system.nodeOf[i]] * v[i];
@@ -130,7 +181,7 @@ function combine(onto: readonly number[], c: Float64Array): number {
   return sum;
 }
 
-/** Root of share(t) = left: bracketed by doubling, then bisected to rounding (60 halvings). */
+/** Root of share(t) = left: bracketed by doubling, then bisected to rounding. */
 function timeUntil(share: (t: number) => number, left: number, scale: number): number {
   let low = 0;
   let high = scale / 16;
