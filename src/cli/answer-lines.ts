@@ -1,13 +1,16 @@
 import type { Asked, Case, Layout, Start } from '../case/case.ts';
-import { formatQuantity, readableUnit } from '../case/format-quantity.ts';
+import { formatNumber, formatQuantity, readableUnit } from '../case/format-quantity.ts';
 import type { Answers } from '../run/answers.ts';
 import { askedOf, figureValue } from '../run/asked.ts';
-import { cautions } from '../run/cautions.ts';
+import { cautionsOf } from '../run/cautions.ts';
 import { type Column, tableLines, wrapped } from './table.ts';
 
 const lineWidth = 100;
 
-/** The tables a person sees after `tarry solve`: one per figure asked, then where the particles end, then cautions. */
+/**
+ * The tables a person sees after `tarry solve`: one per figure asked, then where the particles end, then what rules each
+ * layout and what to mind.
+ */
 export function answerLines(
   theCase: Case,
   layouts: readonly Layout[],
@@ -23,11 +26,50 @@ export function answerLines(
     for (const one of asked) lines.push(...figureLines(theCase, start, one, layouts, rows), '');
     lines.push(...shareLines(theCase, start, rows), '');
   }
-  lines.push('e: estimated, not proven.', '');
+  lines.push(...numberLines(theCase, layouts, answers), '', 'e: estimated, not proven.', '');
   for (const text of theCase.notAvailable) lines.push(...wrapped(text, lineWidth, ''));
   for (const text of theCase.warnings) lines.push(...wrapped(`Warning: ${text}`, lineWidth, ''));
-  lines.push(...wrapped(cautions.join(' '), lineWidth, ''));
+  for (const text of ownWarnings(theCase, answers)) lines.push(...wrapped(`Warning: ${text}`, lineWidth, ''));
+  lines.push(...wrapped(cautionsOf(theCase).join(' '), lineWidth, ''));
   return lines;
+}
+
+/** What answers warn of beyond the case's own warnings, each once, with the layout it is about. */
+function ownWarnings(theCase: Case, answers: readonly Answers[]): string[] {
+  const ofCase = new Set([...theCase.warnings, ...theCase.notAvailable]);
+  const found = answers.flatMap(({ layout, warnings }) =>
+    warnings.filter((text) => !ofCase.has(text)).map((text) => `layout ${JSON.stringify(layout)}: ${text}`),
+  );
+  return [...new Set(found)];
+}
+
+/** Numbers without a dimension by layout (METHODS 3), those that any layout has. */
+function numberLines(theCase: Case, layouts: readonly Layout[], answers: readonly Answers[]): string[] {
+  const solved = layouts.flatMap(({ name }) => answers.find((one) => one.layout === name) ?? []);
+  if (solved.length === 0) return [];
+  const columns = (
+    [
+      ['vL/D', ({ numbers }: Answers) => numbers.peclet],
+      ['κL/D', ({ numbers }: Answers) => numbers.kappaLOverD],
+      ['cL²/D', ({ numbers }: Answers) => numbers.cL2OverD],
+      ['rounding', ({ numbers }: Answers) => numbers.roundingFloor],
+    ] as const
+  ).filter(([, of]) => solved.some((one) => of(one) !== undefined));
+  const rows = solved.map((one) => [
+    one.layout,
+    ...columns.map(([, of]) => {
+      const value = of(one);
+      return value === undefined ? '' : formatNumber(value, 3);
+    }),
+  ]);
+  const extent = formatQuantity(solved[0]?.numbers.longestExtent ?? 0, 'length', theCase.units);
+  return [
+    `what rules each layout, L = ${extent}`,
+    ...tableLines(
+      [{ title: 'layout', align: 'left' }, ...columns.map(([title]): Column => ({ title, align: 'right' }))],
+      rows,
+    ),
+  ];
 }
 
 /** The start in words: 'released evenly in inlet bay'. */

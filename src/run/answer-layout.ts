@@ -1,20 +1,16 @@
 import { locate, type Mesh, meshDomain, meshQuality } from '../../mesher/index.ts';
-import {
-  assemble,
-  exitDensity,
-  exitShares,
-  meanExitTime,
-  roundingFloor,
-  valueFromStart,
-} from '../../solver/index.ts';
+import { assemble, exitDensity, roundingFloor, valueFromStart } from '../../solver/index.ts';
 import type { Case, Layout } from '../case/case.ts';
 import { CaseError } from '../case/errors.ts';
 import { type LayoutDomain, layoutDomain } from '../case/layout-domain.ts';
 import type { Answer, Answers } from './answers.ts';
 import { answerAsked, askedOf } from './asked.ts';
-import { cautions, references } from './cautions.ts';
+import { cautionsOf, references } from './cautions.ts';
 import { compartmentArea, meshOptions } from './mesh-options.ts';
 import { inCaseTerms } from './name-places.ts';
+import { physicsNumbers } from './physics-numbers.ts';
+import { physicsWarnings } from './physics-warnings.ts';
+import { solveFields } from './solved-fields.ts';
 import { type AnswerableStart, isAnswerable, startWeights } from './start-weights.ts';
 import { version } from './version.ts';
 
@@ -26,7 +22,7 @@ export interface LayoutAnswer {
   readonly domain: LayoutDomain;
   /** Per node, in the case's time unit. */
   readonly meanExitTime: Float64Array;
-  /** Per start and node: share of the particles that end at that wall node; sums to 1. */
+  /** Per start and node: share of the particles caught at that node; sums to 1 less what is lost. */
   readonly caughtAt: readonly Float64Array[];
 }
 
@@ -81,11 +77,29 @@ function solveLayout(
   const sizes = meshOptions(domain, theCase.accuracy.nodes);
   const mesh = meshDomain(domain.domain, { ...sizes, ...hooks('triangulating', 0, 0.3) });
   const meshed = clock();
-  const system = assemble(mesh, domain.problem(mesh.regionSets), hooks('assembling', 0.3, 0.5));
-  const time = meanExitTime(system, hooks('solving for the mean exit time', 0.5, 0.8));
-  const floor = roundingFloor(system, time);
-  const shares = exitShares(system, hooks('solving for the shares', 0.8, 0.95));
+  const problem = domain.problem(mesh.regionSets);
+  const system = assemble(mesh, problem, hooks('assembling', 0.3, 0.5));
+  const fields = solveFields(system, problem, domain.exits, (doing, from, to) =>
+    hooks(doing, 0.5 + 0.45 * from, 0.5 + 0.45 * to),
+  );
+  const { meanExitTime: time, shares } = fields;
   const places = locate(mesh);
+  const sameForAll = {
+    reversible: system.cycle === undefined,
+    ...(fields.conductance && { conductance: fields.conductance }),
+    mesh: meshFacts(mesh, domain),
+    numbers: {
+      ...physicsNumbers(mesh, problem),
+      roundingFloor: roundingFloor(system, time),
+      negativeRates: system.negativeRates.count,
+    },
+    warnings: [
+      ...physicsWarnings(theCase, mesh, places, problem, system),
+      ...theCase.warnings,
+      ...theCase.notAvailable,
+    ],
+    cautions: cautionsOf(theCase),
+  };
   const starts = theCase.starts
     .filter(isAnswerable)
     .filter((start) => !options.starts || options.starts.includes(start.name));
@@ -96,8 +110,7 @@ function solveLayout(
     weights: weightsOf({ kind: 'point', name: pin.name, at: pin.at }, 'pins'),
   }));
   const named = (weights: Float64Array): Record<string, Answer> =>
-    Object.fromEntries(shares.map((field, exit) => [domain.exits[exit] ?? '', estimate(weights, field)]));
-  const quality = meshQuality(mesh);
+    Object.fromEntries([...shares].map(([name, field]) => [name, estimate(weights, field)]));
   const caughtAt: Float64Array[] = [];
   const answers = starts.map((start): Answers => {
     const weights = weightsOf(start, 'starts');
@@ -111,9 +124,10 @@ function solveLayout(
       layout: layout.name,
       start: start.name,
       units: theCase.units.length === '' ? 'none' : theCase.units,
-      reversible: true,
+      reversible: sameForAll.reversible,
       mean,
       shares: byExit,
+      ...(sameForAll.conductance && { conductance: sameForAll.conductance }),
       pins: Object.fromEntries(
         pins.map((pin) => [pin.name, { mean: estimate(pin.weights, time), shares: named(pin.weights) }]),
       ),
@@ -121,19 +135,13 @@ function solveLayout(
         mean,
         shares: byExit,
       }),
-      mesh: {
-        nodes: mesh.nodes.length / 2,
-        triangles: mesh.triangles.length / 3,
-        area: compartmentArea(domain.domain),
-        minAngle: quality.minAngle,
-        chordError: mesh.chordError,
-      },
-      numbers: { roundingFloor: floor },
+      mesh: sameForAll.mesh,
+      numbers: sameForAll.numbers,
       healed: theCase.drawing.healed,
       taken: theCase.drawing.taken,
       leftOut: theCase.drawing.leftOut,
-      warnings: [...theCase.warnings, ...theCase.notAvailable],
-      cautions,
+      warnings: sameForAll.warnings,
+      cautions: sameForAll.cautions,
       references,
       made: { version, at: options.at, command: options.command, seconds: { mesh: 0, solve: 0 } },
     };
@@ -145,6 +153,16 @@ function solveLayout(
     domain,
     meanExitTime: time,
     caughtAt,
+  };
+}
+
+function meshFacts(mesh: Mesh, { domain }: LayoutDomain): Answers['mesh'] {
+  return {
+    nodes: mesh.nodes.length / 2,
+    triangles: mesh.triangles.length / 3,
+    area: compartmentArea(domain),
+    minAngle: meshQuality(mesh).minAngle,
+    chordError: mesh.chordError,
   };
 }
 

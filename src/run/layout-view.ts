@@ -38,7 +38,7 @@ export interface PlainLayoutAnswer {
   readonly domain: PlainDomain;
   /** Per node, in the case's time unit. */
   readonly meanExitTime: Float64Array;
-  /** Per start and node: share of the particles that end at that wall node. */
+  /** Per start and node: share of the particles caught at that node. */
   readonly caughtAt: readonly Float64Array[];
 }
 
@@ -73,7 +73,7 @@ export function layoutView(theCase: Case, layout: string, answer: PlainLayoutAns
  * Share caught per length on each wall segment, 0 on reflecting ones. A node's share is spread evenly over the catching
  * segments at it, so that Σ density·length = Σ caught: nothing is lost in drawing it.
  *
- * @param caught per node, sums to 1
+ * @param caught per node; what a catching floor takes beside a wall is drawn with the wall
  */
 function catchingDensity(mesh: Mesh, domain: PlainDomain, caught: Float64Array): Float64Array {
   const { nodes, segments, segmentTag } = mesh;

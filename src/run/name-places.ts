@@ -51,7 +51,10 @@ function writtenPlaces({ drawing }: Case, at: readonly Point[]): readonly Point[
 
 /** A message of a kernel with its places in print: as the case writes them, four digits. */
 function asWritten(theCase: Case, what: string, at: readonly Point[] = []): string {
-  return at.reduce((text, place) => text.replace(`(${place[0]}, ${place[1]})`, placeWords(theCase, place)), what);
+  return at.reduce(
+    (text, place) => text.replace(`(${place[0]}, ${place[1]})`, placeWords(theCase, place)),
+    what,
+  );
 }
 
 /** Where the case states what the solver finds wrong at some place; undefined for what lies in the layout. */

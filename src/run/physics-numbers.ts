@@ -129,12 +129,7 @@ function slope(potential: Coefficient, [a, b, c]: Corners): Place {
 }
 
 /** D⁻¹b. */
-function overD(
-  medium: Medium,
-  drift: Extract<Drift, { kind: 'components' }>,
-  x: number,
-  y: number,
-): Place {
+function overD(medium: Medium, drift: Extract<Drift, { kind: 'components' }>, x: number, y: number): Place {
   const [xx, xy, yy] = entriesAt(medium, x, y);
   const [bx, by] = [valueAt(drift.x, x, y), valueAt(drift.y, x, y)];
   const det = xx * yy - xy * xy;

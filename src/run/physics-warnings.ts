@@ -95,7 +95,10 @@ function touches(mesh: Mesh, set: number, [x, y]: Point): boolean {
 }
 
 /** The largest difference between two media's potentials at a node of both. */
-function potentialJump(mesh: Mesh, { media }: Problem): { readonly by: number; readonly at: Point } | undefined {
+function potentialJump(
+  mesh: Mesh,
+  { media }: Problem,
+): { readonly by: number; readonly at: Point } | undefined {
   const potentials = media.map(({ drift }) => (drift?.kind === 'potential' ? drift.value : undefined));
   if (new Set(potentials.filter((one) => one !== undefined)).size < 2) return undefined;
   const { nodes, triangles, regionSet } = mesh;
