@@ -5,7 +5,7 @@ export { valueFromStart } from './answers/fields.ts';
 export { meanExitTime } from './answers/mean-exit-time.ts';
 export { exitTimeMoments, standardDeviation, timeByExit, timeInRegion } from './answers/moments.ts';
 export { roundingFloor } from './answers/rounding-floor.ts';
-export { evenStart, pointStart, spotStart } from './answers/starts.ts';
+export { densityStart, evenStart, pointStart, spotStart } from './answers/starts.ts';
 export {
   type Arrivals,
   arrivals,

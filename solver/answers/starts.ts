@@ -1,6 +1,6 @@
 import type { Mesh } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
-import { triangleArea } from '../operator/lumped-integral.ts';
+import { lumpedIntegral, triangleArea } from '../operator/lumped-integral.ts';
 import { momentsInDisc } from './disc-overlap.ts';
 
 /**
@@ -30,6 +30,40 @@ export function evenStart(mesh: Mesh, inside: (regionSet: number) => boolean = (
     );
   }
   return scaled(weights, total);
+}
+
+/**
+ * Start spread with a density ρ ≥ 0 (any scale): ∫ρφ_i ÷ ∫ρ by a rule of degree 5 on every triangle.
+ *
+ * @param density per area at (x, y) in the length unit
+ * @param inside told a triangle's `regionSet` number; default: everywhere
+ * @returns weights, one per mesh node, sum 1
+ * @throws {SolverError} START_OUTSIDE when the density is negative or not finite somewhere, or zero throughout
+ */
+export function densityStart(
+  mesh: Mesh,
+  density: (x: number, y: number) => number,
+  inside: (regionSet: number) => boolean = () => true,
+): Float64Array {
+  const at = (x: number, y: number): number => {
+    const value = density(x, y);
+    if (value >= 0 && value < Number.POSITIVE_INFINITY) return value;
+    throw new SolverError(
+      'START_OUTSIDE',
+      `The density to start with is ${value} at (${x}, ${y})`,
+      { at: [[x, y]] },
+      'Give a density that is zero or positive, and finite, everywhere in the compartment.',
+    );
+  };
+  const weights = lumpedIntegral(mesh, (region) => (inside(region) ? { kind: 'varying', at } : undefined));
+  const total = weights.reduce((sum, weight) => sum + weight, 0);
+  if (total > 0) return scaled(weights, total);
+  throw new SolverError(
+    'START_OUTSIDE',
+    'The density to start with is zero throughout the compartment',
+    {},
+    'Give a density that is positive somewhere in it.',
+  );
 }
 
 /**

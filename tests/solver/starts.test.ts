@@ -1,5 +1,12 @@
 import { expect, it } from 'vitest';
-import { evenStart, pointStart, SolverError, spotStart, valueFromStart } from '../../solver/index.ts';
+import {
+  densityStart,
+  evenStart,
+  pointStart,
+  SolverError,
+  spotStart,
+  valueFromStart,
+} from '../../solver/index.ts';
 import { rectangleMesh } from '../support/grid-mesh.ts';
 
 const mesh = rectangleMesh({
@@ -58,4 +65,22 @@ it('a start outside is refused with its place', () => {
   expect(() => spotStart(mesh, 3, 3, 0.5)).toThrow(SolverError);
   expect(() => spotStart(mesh, 3, 3, 0.5)).toThrow(/\(3, 3\)/);
   expect(() => evenStart(mesh, () => false)).toThrow(/no area/);
+});
+
+it('a density start has the moments of its density: ρ = x y on [0, 2] × [0, 1] has its middle at (4/3, 2/3) [exact]', () => {
+  const start = densityStart(mesh, (px, py) => 5 * px * py);
+  expect(valueFromStart(start, one)).toBeCloseTo(1, 13);
+  expect(valueFromStart(start, x)).toBeCloseTo(4 / 3, 12); // degree 3 in all: the rule is exact
+  expect(valueFromStart(start, y)).toBeCloseTo(2 / 3, 12);
+  const right = densityStart(
+    mesh,
+    () => 1,
+    (set) => set === 1,
+  );
+  expect(valueFromStart(right, x)).toBeCloseTo(1.5, 12);
+});
+
+it('a density that is negative somewhere, or zero throughout, is refused', () => {
+  expect(() => densityStart(mesh, (px) => px - 1.9)).toThrow(/density/);
+  expect(() => densityStart(mesh, () => 0)).toThrow(SolverError);
 });
