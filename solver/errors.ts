@@ -14,6 +14,7 @@ export type SolverCode =
   | 'NO_WAY_OUT'
   | 'START_OUTSIDE'
   | 'START_ON_ABSORBING_WALL'
+  | 'EXIT_TOO_RARE'
   | 'MEMORY_LIMIT'
   | 'NOT_CONVERGED'
   | 'SOLVING_STOPPED';

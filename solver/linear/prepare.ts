@@ -9,6 +9,7 @@ import { gmres } from './gmres.ts';
 import type { IterationOptions, Solution } from './iteration.ts';
 import { type Factor, type FactorOptions, factorDefaults, factorize } from './multifrontal.ts';
 import { buildMultigrid } from './multigrid/multigrid.ts';
+import { largestOf } from './residual.ts';
 import { stopIfAsked } from './stopping.ts';
 
 /** Which preconditioner: the factor unless its memory is above the limit and multigrid can stand in. */
@@ -138,10 +139,10 @@ function throughFactor(factor: Factor, rhs: readonly Float64Array[], hooks: Hook
 /**
  * The solution of A x = rhs.
  *
- * @throws {SolverError} NOT_CONVERGED with the residual reached, MEMORY_LIMIT, SOLVING_STOPPED
+ * @throws {SolverError} NOT_CONVERGED with the residual reached, EXIT_TOO_RARE, MEMORY_LIMIT, SOLVING_STOPPED
  */
 export function solveOrThrow(system: System, rhs: Float64Array, hooks: Hooks = {}): Float64Array {
-  return fieldOf(prepare(system, hooks).solve(rhs, hooks));
+  return fieldOf(system, prepare(system, hooks).solve(rhs, hooks));
 }
 
 /** The solutions of A x = rhs for many right-hand sides; throws what {@link solveOrThrow} throws. */
@@ -150,20 +151,36 @@ export function solveManyOrThrow(
   rhs: readonly Float64Array[],
   hooks: Hooks = {},
 ): Float64Array[] {
-  return prepare(system, hooks).solveMany(rhs, hooks).map(fieldOf);
+  return prepare(system, hooks)
+    .solveMany(rhs, hooks)
+    .map((solution) => fieldOf(system, solution));
 }
 
 /** The solution of Aᵀ x = rhs; throws what {@link solveOrThrow} throws. */
 export function solveAdjointOrThrow(system: System, rhs: Float64Array, hooks: Hooks = {}): Float64Array {
-  return fieldOf(prepare(system, hooks).solveAdjoint(rhs, hooks));
+  return fieldOf(system, prepare(system, hooks).solveAdjoint(rhs, hooks));
 }
 
-function fieldOf(solution: Solution): Float64Array {
+/** Beyond this, rates were below the smallest normal number somewhere and digits are lost. */
+const largestTime = 1e300;
+
+function fieldOf(system: System, solution: Solution): Float64Array {
+  const rare = solution.converged ? largestOf(solution.x) > largestTime : Number.isNaN(solution.residual);
+  if (rare && system.negativeRates.count === 0) throw tooRare();
   if (solution.converged) return solution.x;
   throw new SolverError(
     'NOT_CONVERGED',
     `The linear solve stopped at a relative residual of ${solution.residual.toExponential(1)} after ${solution.iterations} steps`,
     {},
     'Refine the mesh where coefficients change fast, or bring the coefficients nearer to each other.',
+  );
+}
+
+function tooRare(): SolverError {
+  return new SolverError(
+    'EXIT_TOO_RARE',
+    'Leaving is so rare that its time is beyond the largest number (a barrier of some 700 kT)',
+    {},
+    'Weaken the drift or its potential, or look at a smaller part of the compartment.',
   );
 }

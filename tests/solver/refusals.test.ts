@@ -74,3 +74,11 @@ it('a solve ends when it is asked to, with a typed error', () => {
   expect(() => meanExitTime(system, { stop })).toThrow(expect.objectContaining({ code: 'SOLVING_STOPPED' }));
   expect(() => assemble(mesh, problem(constant(1), open), { stop })).toThrow(SolverError);
 });
+
+it('a wind that holds everything back by thousands of kT is refused: the time is beyond the largest number', () => {
+  const drift = { kind: 'components', x: constant(0), y: constant(40) } as const; // towards the reflecting top
+  const windy = { ...problem(constant(1), open), media: [{ diffusion: constant(0.01), drift }] };
+  expect(() => meanExitTime(assemble(mesh, windy))).toThrow(
+    expect.objectContaining({ code: 'EXIT_TOO_RARE' }),
+  );
+});
