@@ -3,7 +3,9 @@ import type { Point } from './domain.ts';
 /** Points nearer to each other than the tolerance are one: the first one registered gives the coordinates. */
 export class PointIndex {
   readonly xy: number[] = [];
-  readonly #cells = new Map<string, number[]>();
+  /** Newest point of each cell, and per point the one before it in its cell. */
+  readonly #first = new Map<number, number>();
+  readonly #after: number[] = [];
   readonly #tolerance: number;
   readonly #cell: number;
 
@@ -22,34 +24,45 @@ export class PointIndex {
 
   /** The number of the point at or within the tolerance of `p`, a new one if there is none. */
   add(p: Point): number {
-    for (const key of this.#keys(p)) {
-      for (const index of this.#cells.get(key) ?? []) {
-        const dx = this.xy[2 * index] - p[0];
-        const dy = this.xy[2 * index + 1] - p[1];
-        if (Math.hypot(dx, dy) <= this.#tolerance) return index;
+    const [x, y] = p;
+    const reach = this.#tolerance;
+    const left = this.#step(x - reach);
+    const right = this.#step(x + reach);
+    const low = this.#step(y - reach);
+    const high = this.#step(y + reach);
+    for (let i = left; ; i = right) {
+      for (let j = low; ; j = high) {
+        const found = this.#find(i, j, x, y);
+        if (found >= 0) return found;
+        if (j === high) break;
       }
+      if (i === right) break;
     }
     const index = this.count;
-    this.xy.push(p[0], p[1]);
-    const home = this.#home(p);
-    const list = this.#cells.get(home);
-    if (list) list.push(index);
-    else this.#cells.set(home, [index]);
+    this.xy.push(x, y);
+    const key = hash(this.#step(x), this.#step(y));
+    this.#after.push(this.#first.get(key) ?? -1);
+    this.#first.set(key, index);
     return index;
   }
 
-  #home(p: Point): string {
-    if (this.#cell === 0) return `${p[0] + 0},${p[1] + 0}`;
-    return `${Math.floor(p[0] / this.#cell)},${Math.floor(p[1] / this.#cell)}`;
+  #step(value: number): number {
+    return this.#cell === 0 ? value + 0 : Math.floor(value / this.#cell);
   }
 
-  #keys(p: Point): Set<string> {
-    const keys = new Set([this.#home(p)]);
-    if (this.#cell === 0) return keys;
-    for (const sx of [-1, 1]) {
-      for (const sy of [-1, 1])
-        keys.add(this.#home([p[0] + sx * this.#tolerance, p[1] + sy * this.#tolerance]));
+  #find(i: number, j: number, x: number, y: number): number {
+    let index = this.#first.get(hash(i, j)) ?? -1;
+    let found = -1;
+    while (index >= 0) {
+      // The oldest one counts, and the chain starts with the newest.
+      if (Math.hypot(this.xy[2 * index] - x, this.xy[2 * index + 1] - y) <= this.#tolerance) found = index;
+      index = this.#after[index];
     }
-    return keys;
+    return found;
   }
+}
+
+/** One number for a cell; different cells may share it, which only costs a comparison. */
+function hash(i: number, j: number): number {
+  return i * 0.7548776662466927 + j * 0.5698402909980532;
 }

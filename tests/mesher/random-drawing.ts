@@ -98,11 +98,12 @@ class Drawing {
     return { curve, tag: this.#tag++ };
   }
 
-  /** About a third of the straight walls become arcs or Bézier curves where there is room. */
+  /** Up to half of the straight walls become arcs or Bézier curves where there is room, never two in a row. */
   bendWalls(): void {
+    let bent = -2;
     this.#outline = this.#outline.map((piece, i) => {
       const random = this.#random;
-      if (random() > 0.33 || piece.curve.kind !== 'line') return piece;
+      if (random() > 0.5 || bent === i - 1 || i === 0 || piece.curve.kind !== 'line') return piece;
       const { from, to } = piece.curve;
       const bulge = (random() - 0.5) * 0.7;
       const curve = random() < 0.5 ? arcOver(from, to, bulge) : bezierOver(from, to, bulge, random);
@@ -115,6 +116,7 @@ class Drawing {
         middle.every((p) => others.every((o) => gap(p, o) > 0.04 * length)) &&
         parts.every((p) => others.every((o) => !crossing(p, o)));
       if (!free) return piece;
+      bent = i;
       this.#taken = this.#taken.map((s, k) => (k === i ? [from, from] : s));
       this.#taken.push(...parts);
       return { curve, tag: piece.tag };

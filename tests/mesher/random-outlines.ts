@@ -60,7 +60,7 @@ function oriented(points: Point[]): Point[] {
 
 /** The rim of a grown patch of grid cells with shaken corners: branches, bays, no two walls near each other. */
 export function polyomino(random: () => number, corners: number): Point[] {
-  const side = Math.max(4, Math.ceil(Math.sqrt(corners) * 0.9));
+  const side = Math.max(4, Math.ceil(Math.sqrt(corners) * 1.15));
   const cells = new Uint8Array(side * side);
   const filled = (x: number, y: number): boolean =>
     x >= 0 && y >= 0 && x < side && y < side && cells[y * side + x] === 1;
@@ -84,7 +84,7 @@ export function polyomino(random: () => number, corners: number): Point[] {
     // One run of filled neighbours round the cell, with a side among them: the patch stays in one piece without holes.
     const runs = ringOf.filter((f, i) => f && !ringOf[(i + 7) % 8]).length;
     const sides = [0, 2, 4, 6].filter((i) => ringOf[i]).length;
-    if (runs !== 1 || sides === 0) continue;
+    if (runs !== 1 || sides === 0 || (sides > 1 && random() > 0.1)) continue;
     cells[y * side + x] = 1;
     rim += 4 - 2 * sides;
   }
