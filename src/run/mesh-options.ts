@@ -9,6 +9,7 @@ import {
   type SizeSource,
 } from '../../mesher/index.ts';
 import type { LayoutDomain } from '../case/layout-domain.ts';
+import { layerSources } from './layer-sizes.ts';
 import { narrowGaps } from './narrow-gaps.ts';
 
 /** How fine the first mesh of a layout is. Lengths are relative to the even size. */
@@ -32,8 +33,8 @@ export const firstMesh = {
 } as const;
 
 /**
- * Sizes for the first mesh of a layout: even, graded towards places where the kind of wall changes, along bends and
- * in narrow parts.
+ * Sizes for the first mesh of a layout: even, graded towards places where the kind of wall changes, along bends, in
+ * narrow parts and along walls where drift makes thin layers.
  *
  * @param scale multiplies every size; 2 for a quick coarse mesh
  */
@@ -48,6 +49,7 @@ export function meshOptions(layout: LayoutDomain, maxNodes: number, scale = 1): 
   for (const { at, width } of narrowGaps(layout.domain, even / (scale * firstMesh.perGap))) {
     sources.push({ at, size: Math.max(scale * firstMesh.perGap * width, firstMesh.leastInGap * even) });
   }
+  sources.push(...layerSources(layout, even, maxNodes, scale));
   return { maxSize: even, sources, growth: firstMesh.growth, maxNodes };
 }
 

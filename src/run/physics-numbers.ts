@@ -136,6 +136,19 @@ function overD(medium: Medium, drift: Extract<Drift, { kind: 'components' }>, x:
   return [(yy * bx - xy * by) / det, (xx * by - xy * bx) / det];
 }
 
+/**
+ * D⁻¹b of a medium at a place, zero without drift; a potential's slope by central differences.
+ *
+ * @param step for the differences, in the length unit
+ */
+export function driftOverD(medium: Medium, [x, y]: Place, step: number): Place {
+  const { drift } = medium;
+  if (!drift) return [0, 0];
+  if (drift.kind === 'components') return overD(medium, drift, x, y);
+  const v = (dx: number, dy: number): number => valueAt(drift.value, x + dx, y + dy);
+  return [(v(-step, 0) - v(step, 0)) / (2 * step), (v(0, -step) - v(0, step)) / (2 * step)];
+}
+
 function entriesAt({ tensor, diffusion }: Medium, x: number, y: number): Entries {
   if (tensor) return tensor.kind === 'constant' ? tensor.value : tensor.at(x, y);
   const d = valueAt(diffusion, x, y);
