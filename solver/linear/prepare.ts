@@ -162,7 +162,7 @@ export function solveAdjointOrThrow(system: System, rhs: Float64Array, hooks: Ho
 }
 
 /** Beyond this, rates were below the smallest normal number somewhere and digits are lost. */
-const largestTime = 1e300;
+const largestTime = 1e306;
 
 function fieldOf(system: System, solution: Solution): Float64Array {
   const rare = solution.converged ? largestOf(solution.x) > largestTime : Number.isNaN(solution.residual);
