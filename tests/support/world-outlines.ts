@@ -2,7 +2,6 @@ import { readFileSync } from 'node:fs';
 import { createRequire } from 'node:module';
 import { orient2d } from 'robust-predicates';
 import { feature } from 'topojson-client';
-import type { GeometryCollection, Topology } from 'topojson-specification';
 import {
   type Chain,
   checkMesh,
@@ -19,6 +18,9 @@ export type WorldMap = 'land-110m' | 'land-50m' | 'land-10m' | 'countries-50m';
 /** Walls nearer than this, in degrees, are one: about a tenth of a micrometre on the ground. */
 const tolerance = 1e-12;
 
+type Topology = Parameters<typeof feature>[0];
+type GeometryCollection = Parameters<typeof feature>[1];
+
 type Rings = readonly (readonly Point[])[];
 
 /** Every polygon of a map, longitude and latitude taken as plane coordinates. */
@@ -26,9 +28,9 @@ export function worldPolygons(map: WorldMap): Rings[] {
   const file = createRequire(import.meta.url).resolve(`world-atlas/${map}.json`);
   const topology = JSON.parse(readFileSync(file, 'utf8')) as Topology;
   const name = map.startsWith('land') ? 'land' : 'countries';
-  const collection = feature(topology, topology.objects[name] as GeometryCollection);
+  const found = feature(topology, topology.objects[name] as GeometryCollection);
   const polygons: Rings[] = [];
-  for (const { geometry } of collection.features) {
+  for (const { geometry } of found.type === 'FeatureCollection' ? found.features : [found]) {
     if (geometry.type === 'Polygon') polygons.push(geometry.coordinates as unknown as Rings);
     if (geometry.type === 'MultiPolygon') polygons.push(...(geometry.coordinates as unknown as Rings[]));
   }

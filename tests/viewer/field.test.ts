@@ -196,6 +196,9 @@ it('a lifted surface hides the wall behind it and not the wall before it', () =>
   const view = project(extentOf(field), 1, ROOM, SIZE);
   const hidden = hiddenBy(new Locator(field), view, view.rise);
   expect(hidden(0.5, 1, 0)).toBe(true);
+  // What floats just outside the back wall is behind the surface too.
+  expect(hidden(0.5, 1.01, 0)).toBe(true);
+  expect(hidden(0.5, -0.01, 0)).toBe(false);
   expect(hidden(0.5, 0, 0)).toBe(false);
   expect(hidden(0.5, 0.5, view.rise)).toBe(false);
   const flat = project(extentOf(field), 0, ROOM, SIZE);
