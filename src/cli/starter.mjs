@@ -10,6 +10,6 @@ compile('viewer');
 if (serve) buildPage();
 
 const { main } = await import(pathToFileURL(join(root, 'dist/src/cli/main.js')).href);
-const status = await main(['solve', join(root, 'meshes/capture-chamber.case.json')]);
+const status = await main(['solve', join(root, 'meshes/capture-chamber.case.json'), '--start', 'inlet bay']);
 process.exitCode = status;
 if (status === 0 && serve) process.exitCode = await main(['serve']);
