@@ -84,7 +84,7 @@ export function requireFeasible(
     if (count > 2 * maxNodes) {
       throw new MesherError(
         'CORNER_TOO_SHARP',
-        `the corner at (${x}, ${y}) of ${degrees.toPrecision(3)} degrees is too sharp: it alone needs about ${count.toPrecision(2)} triangles`,
+        `the corner at ${placeText([x, y])} of ${degrees.toPrecision(3)} degrees is too sharp: it alone needs about ${count.toPrecision(2)} triangles`,
         { at: [[x, y]] },
         'Blunt the corner, or allow more nodes.',
       );

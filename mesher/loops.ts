@@ -91,7 +91,7 @@ function hasLength(curve: Curve, tolerance: number): boolean {
 function openLoop(chain: Chain, a: Point, b: Point, gap: number): MesherError {
   return new MesherError(
     'LOOP_OPEN',
-    `${chain.name} is not closed: a gap of ${gap.toPrecision(3)} at (${a[0]}, ${a[1]})`,
+    `${chain.name} is not closed: a gap of ${gap.toPrecision(3)} at ${placeText(a)}`,
     { at: [a, b], loops: [chain.name] },
     'Close it, or raise the tolerance above the gap.',
   );

@@ -14,7 +14,7 @@ export function judge(arrangement: Arrangement, graph: LineGraph): void {
   refuseMisplaced(graph);
 }
 
-const show = (p: Point): string => `(${p[0]}, ${p[1]})`;
+const show = placeText;
 
 /** Up to five places in words; all of them are in `where.at`. */
 function places(at: readonly Point[]): string {
