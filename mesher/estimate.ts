@@ -1,6 +1,7 @@
 import type { SharpCorner } from './corners.ts';
 import { MesherError } from './errors.ts';
 import type { HalfEdgeMesh } from './half-edge.ts';
+import { placeText } from './place-text.ts';
 import type { SizeField } from './size-field.ts';
 
 /** Triangles per area over size squared that refinement makes where only the size asks for them; measured. */

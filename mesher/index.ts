@@ -18,6 +18,6 @@ export { chainLength, enclosedArea } from './measure.ts';
 export type { Mesh } from './mesh.ts';
 export { meshDefaults, meshDomain, remesh } from './mesh-domain.ts';
 export type { MeshOptions, SizeSource } from './options.ts';
-export { placeText } from './place-text.ts';
 export { type ConnectedPieces, connectedPieces } from './pieces.ts';
+export { placeText } from './place-text.ts';
 export { type MeshQuality, meshQuality } from './quality.ts';

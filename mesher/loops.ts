@@ -2,6 +2,7 @@ import { curveLength, nearestParameter, pointAt, reversed } from './curves.ts';
 import type { Chain, Curve, Domain, Healing, Piece, Point } from './domain.ts';
 import { MesherError } from './errors.ts';
 import { chainLength, enclosedArea } from './measure.ts';
+import { placeText } from './place-text.ts';
 
 /**
  * Puts single loops right: finite coordinates, gaps closed, repeated points dropped, winding as Domain promises, a

@@ -3,6 +3,7 @@ import type { Arrangement } from './arrange.ts';
 import type { Point } from './domain.ts';
 import { MesherError } from './errors.ts';
 import type { LineGraph } from './line-graph.ts';
+import { placeText } from './place-text.ts';
 import { orient } from './predicates.ts';
 import type { Chord } from './strands.ts';
 

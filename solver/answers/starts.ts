@@ -1,4 +1,4 @@
-import type { Mesh } from '../../mesher/index.ts';
+import { type Mesh, placeText } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 import { lumpedIntegral, triangleArea } from '../operator/lumped-integral.ts';
 import { momentsInDisc } from './disc-overlap.ts';
@@ -50,7 +50,7 @@ export function densityStart(
     if (value >= 0 && value < Number.POSITIVE_INFINITY) return value;
     throw new SolverError(
       'START_OUTSIDE',
-      `The density to start with is ${value} at (${x}, ${y})`,
+      `The density to start with is ${value} at ${placeText([x, y])}`,
       { at: [[x, y]] },
       'Give a density that is zero or positive, and finite, everywhere in the compartment.',
     );
@@ -122,7 +122,7 @@ export function spotStart(mesh: Mesh, x: number, y: number, radius: number): Flo
   if (total > 0) return scaled(weights, total);
   throw new SolverError(
     'START_OUTSIDE',
-    `The starting spot at (${x}, ${y}) with radius ${radius} lies outside the compartment`,
+    `The starting spot at ${placeText([x, y])} with radius ${radius} lies outside the compartment`,
     { at: [[x, y]] },
     'Move the spot into the compartment.',
   );

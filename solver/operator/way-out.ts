@@ -1,4 +1,4 @@
-import type { Mesh } from '../../mesher/index.ts';
+import { type Mesh, placeText } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 
 /**
@@ -48,7 +48,7 @@ function noWayOut(mesh: Mesh, triangle: number, inPiece: (node: number) => boole
   }
   return new SolverError(
     'NO_WAY_OUT',
-    `Nothing can leave the part of the compartment around (${x}, ${y}): the mean exit time there is infinite`,
+    `Nothing can leave the part of the compartment around ${placeText([x, y])}: the mean exit time there is infinite`,
     { at: [[x, y]], tags: [...tags].sort((a, b) => a - b) },
     'Make one of its walls absorbing or partly absorbing.',
   );

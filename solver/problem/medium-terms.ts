@@ -1,3 +1,4 @@
+import { placeText } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 import type { Coefficient, Drift, Medium, NoiseConvention, Problem, Tensor } from './problem.ts';
 import { tensorDivergence, tensorTimesDepth } from './tensor-terms.ts';
@@ -107,7 +108,7 @@ function checked(
       if (good(v)) return v;
       throw new SolverError(
         code,
-        `The ${name} is ${v} at (${x}, ${y})`,
+        `The ${name} is ${v} at ${placeText([x, y])}`,
         { at: [[x, y]] },
         `Give a ${name} that is positive and finite everywhere in the compartment.`,
       );
@@ -123,7 +124,7 @@ function lossOf(c: Coefficient): Coefficient {
       if (v >= 0 && v < Number.POSITIVE_INFINITY) return v;
       throw new SolverError(
         'LOSS_NEGATIVE',
-        `The loss rate is ${v} at (${x}, ${y})`,
+        `The loss rate is ${v} at ${placeText([x, y])}`,
         { at: [[x, y]] },
         'Give a loss rate that is zero or positive, and finite, everywhere.',
       );
@@ -206,7 +207,7 @@ function fieldOf(
 export function driftNotFinite(x: number, y: number, ...values: number[]): SolverError {
   return new SolverError(
     'DRIFT_NOT_FINITE',
-    `The drift or its potential is ${values.join(', ')} at (${x}, ${y})`,
+    `The drift or its potential is ${values.join(', ')} at ${placeText([x, y])}`,
     { at: [[x, y]] },
     'Give a drift that is finite everywhere in the compartment.',
   );

@@ -1,4 +1,4 @@
-import type { Mesh } from '../../mesher/index.ts';
+import { type Mesh, placeText } from '../../mesher/index.ts';
 import { SolverError } from '../errors.ts';
 import type { Coefficient, Problem, Tensor } from './problem.ts';
 
@@ -32,7 +32,7 @@ function positive([xx, xy, yy]: Entries): boolean {
 function notPositive(entries: Entries, x: number, y: number): SolverError {
   return new SolverError(
     'DIFFUSION_NOT_POSITIVE',
-    `The diffusion tensor (xx, xy, yy) is (${entries.join(', ')}) at (${x}, ${y}): not positive definite`,
+    `The diffusion tensor (xx, xy, yy) is (${entries.join(', ')}) at ${placeText([x, y])}: not positive definite`,
     { at: [[x, y]] },
     'Give a symmetric tensor with positive xx, yy and xx·yy > xy² everywhere in the compartment.',
   );
