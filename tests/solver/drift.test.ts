@@ -67,6 +67,19 @@ describe('strip with constant drift v, D = 1', () => {
     }
   });
 
+  it('held against x = 0 the mass is weighed by the trapezoidal rule: off by (vh/D)²/12, and by a quarter at half h', () => {
+    // Known price of M_i = ∫ m φ_i (METHODS 4): ∫ e^−vx dx by trapezoids is (1 + (vh)²/12)/v (Euler–Maclaurin).
+    const walls = [reflecting, absorbing(), reflecting, reflecting];
+    const v = 20;
+    const exact = -1 / v - (1 - Math.exp(v)) / v ** 2;
+    for (const columns of [100, 200]) {
+      const mesh = strip(columns);
+      const u = meanExitTime(assemble(mesh, drifting(1, push(-v), walls)));
+      const error = (u[nodeAt(mesh.nodes, 0, 0.05)] ?? Number.NaN) / exact - 1;
+      expect(error / ((v / columns) ** 2 / 12)).toBeCloseTo(1, 1);
+    }
+  });
+
   it('the drift stays out of the wall condition of u: 0.1441 at a wall with κ = 3, not 0.4323', () => {
     // x = 0 reflecting, x = 1 partly absorbing: u'' + vu' = −1, u'(0) = 0 gives u' = −(1 − e^−vx)/v, and
     // u'(1) + 3u(1) = 0 gives u(1) = (1 − e^−v)/3v. With the drift in it, u' + (3 − v)u = 0, three times that at v = 2.

@@ -56,6 +56,24 @@ it('time in r < ½ of a disc from its centre: c²/4 + (c²/2) ln(R/c) [Green fun
   });
 });
 
+it('times in all regions sum to the mean exit time under drift too, still or turning', () => {
+  for (const x of [constant(4), varying((_, y) => -6 * y)]) {
+    const drift = { kind: 'components', x, y: constant(-3) } as const;
+    const pushed = {
+      ...rim,
+      media: [
+        { diffusion: constant(1), drift },
+        { diffusion: constant(1), drift },
+      ],
+    };
+    const blown = assemble(disc, pushed);
+    const parts = [0, 1].map((region) => timeInRegion(blown, pushed, (set) => set === region));
+    meanExitTime(blown).forEach((u, i) => {
+      expect((parts[0]?.[i] ?? 0) + (parts[1]?.[i] ?? 0)).toBeCloseTo(u, 13);
+    });
+  }
+});
+
 describe('time by exit', () => {
   const strip = rectangleMesh({ x: [0, 1], y: [0, 0.25], columns: 64, rows: 16 });
 
