@@ -1,5 +1,6 @@
 import type { Asked, Case, Layout, Start } from '../case/case.ts';
 import { formatNumber, formatQuantity, readableUnit } from '../case/format-quantity.ts';
+import { canBeLost } from '../case/read-particle.ts';
 import type { Answers } from '../run/answers.ts';
 import { askedOf, figureValue } from '../run/asked.ts';
 import { cautionsOf } from '../run/cautions.ts';
@@ -116,11 +117,12 @@ function figureLines(
   const limit = asked?.limit
     ? `; must be ${asked.limit.kind === 'under' ? 'under' : 'at least'} ${asked.limit.text}`
     : '';
-  return [`${figureWords(asked)}, ${startWords(start)}${limit}`, ...tableLines(columns, rows)];
+  return [`${figureWords(theCase, asked)}, ${startWords(start)}${limit}`, ...tableLines(columns, rows)];
 }
 
-function figureWords(asked: Asked | undefined): string {
-  return !asked || asked.figure.kind === 'mean' ? 'mean exit time' : asked.text;
+function figureWords({ particle }: Case, asked: Asked | undefined): string {
+  if (asked && asked.figure.kind !== 'mean') return asked.text;
+  return canBeLost(particle) ? 'mean time to leave or be lost' : 'mean exit time';
 }
 
 function verdict(asked: Asked | undefined, value: number, show: (value: number) => string): string {

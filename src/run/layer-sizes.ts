@@ -17,8 +17,8 @@ export const layerMesh = {
   perThickness: 0.12,
   /** Rows of sources from the wall inwards, one thickness apart: at the last, e⁻⁴ of the layer is left. */
   rows: 5,
-  /** Never smaller than this part of the even size. */
-  least: 1 / 64,
+  /** Layers count as no thinner than this part of the even size. */
+  least: 1 / 8,
   /** Nodes spent on all layers together, as a part of the most allowed and in number. */
   partOfNodes: 0.5,
   nodes: 30_000,
@@ -37,43 +37,47 @@ export function layerSources(layout: LayoutDomain, even: number, maxNodes: numbe
   if (layout.problem(sets).media.every(({ drift }) => !drift)) return [];
   const mediumAt = mediaByPlace(layout);
   const step = 1e-3 * even;
-  const sizeAt = (tag: number, at: Point, into: Point): number => {
+  const thicknessAt = (tag: number, at: Point, into: Point): number => {
     const inside: Point = [at[0] - step * into[0], at[1] - step * into[1]];
     const [gx, gy] = driftOverD(mediumAt(inside), inside, step);
     const against = gx * into[0] + gy * into[1];
     const kind = layout.pieces.get(tag)?.physics.kind ?? 'reflecting';
     const counts = against < 0 ? kind === 'absorbing' || kind === 'partlyAbsorbing' : kind !== 'absorbing';
     if (!counts || !Number.isFinite(against)) return Number.POSITIVE_INFINITY;
-    return Math.max((scale * layerMesh.perThickness) / Math.abs(against), even * layerMesh.least);
+    return Math.max(1 / Math.abs(against), even * layerMesh.least);
   };
   const piecesOf = (chains: readonly Chain[]): Piece[] => chains.flatMap(({ pieces }) => pieces);
   const rims = piecesOf([outline, ...holes]);
   const inner = piecesOf(innerWalls);
   const sourcesOf = (coarser: number): SizeSource[] => {
     const sources = ({ curve, tag }: Piece, side: -1 | 1): SizeSource[] =>
-      along(curve, side, even, (at, into) => coarser * sizeAt(tag, at, into));
+      along(curve, side, even, coarser * scale * layerMesh.perThickness, (at, into) =>
+        thicknessAt(tag, at, into),
+      );
     return [...rims, ...inner]
       .flatMap((piece) => sources(piece, 1))
       .concat(inner.flatMap((piece) => sources(piece, -1)));
   };
   const sources = sourcesOf(1);
   // Each source stands for the nodes of a strip of its size's width and one thickness long.
-  const nodes = ((2 / Math.sqrt(3)) * sources.length) / layerMesh.perThickness;
+  const nodes = ((2 / Math.sqrt(3)) * sources.length) / (scale * layerMesh.perThickness);
   const most = Math.min(layerMesh.nodes, layerMesh.partOfNodes * maxNodes);
-  return nodes <= most ? sources : sourcesOf(nodes / most);
+  return nodes <= most ? sources : sourcesOf(Math.sqrt(nodes / most));
 }
 
 /**
  * Rows of sources one size apart along a curve, where they ask for less than `even`.
  *
  * @param side 1: the compartment is on the left of the curve; −1: on its right
- * @param sizeAt told a place of the curve and the unit normal into the wall
+ * @param perThickness size ÷ thickness of the layer
+ * @param thicknessAt told a place of the curve and the unit normal into the wall; infinite without a layer
  */
 function along(
   curve: Curve,
   side: -1 | 1,
   even: number,
-  sizeAt: (at: Point, into: Point) => number,
+  perThickness: number,
+  thicknessAt: (at: Point, into: Point) => number,
 ): SizeSource[] {
   const found: SizeSource[] = [];
   for (let t = 0; t < 1; ) {
@@ -81,9 +85,10 @@ function along(
     const speed = Math.hypot(dx, dy);
     const [x, y] = pointAt(curve, t);
     const into: Point = speed > 0 ? [(side * dy) / speed, (-side * dx) / speed] : [0, 0];
-    const size = speed > 0 ? sizeAt([x, y], into) : even;
+    const thickness = speed > 0 ? thicknessAt([x, y], into) : Number.POSITIVE_INFINITY;
+    const size = perThickness * thickness;
     for (let row = 0; size < even && row < layerMesh.rows; row++) {
-      const away = (row * size) / layerMesh.perThickness;
+      const away = row * thickness;
       found.push({ at: [x - away * into[0], y - away * into[1]], size });
     }
     t += speed > 0 ? Math.min(1 / 8, Math.min(size, even) / speed) : 1 / 64;
