@@ -23,11 +23,15 @@ describe('the hash of a case', () => {
 
   it('changes with anything that bears on an answer', () => {
     const { walls } = smallCase() as { walls: object };
+    const varying = { diffusion: { expression: '1 + x', unit: 'mm^2/s' } };
     const all = [
       hash(),
       hash({ particle: { diffusion: 1.0000000000000002e-4 } }),
       hash({ particle: { diffusion: { value: 1e-4, within: '10 %' } } }),
-      hash({ particle: { diffusion: 1e-4, noise: 'ito' } }),
+      hash({ particle: { ...varying, noise: 'ito' } }),
+      hash({ particle: { ...varying, noise: 'isothermal' } }),
+      hash({ particle: { diffusion: 1e-4, drift: { x: 1, y: 0 } } }),
+      hash({ particle: { diffusion: 1e-4, loss: 1 } }),
       hash({ units: { length: 'um', time: 's' } }),
       hash({ reference: 'second' }),
       hash({ walls: { ...walls, lid: { on: 'outline', from: 2, to: 2.5 } } }),
@@ -39,6 +43,10 @@ describe('the hash of a case', () => {
       hash({ title: 'another' }),
     ];
     expect(new Set(all).size).toBe(all.length);
+  });
+
+  it('does not change with the reading of the noise where D is the same everywhere', () => {
+    expect(hash({ particle: { diffusion: 1e-4, noise: 'ito' } })).toBe(hash());
   });
 
   it('changes with a file the case uses', () => {
