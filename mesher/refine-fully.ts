@@ -1,7 +1,8 @@
 import { Cavity } from './cavity.ts';
 import type { HalfEdgeMesh } from './half-edge.ts';
 import { mendAngles } from './mend-angles.ts';
-import { type RefineGoal, refine } from './refine.ts';
+import { refine } from './refine.ts';
+import type { RefineGoal } from './refine-goal.ts';
 
 /** Rounds in which pieces at sharp corners are granted one more halving. */
 const mostRounds = 5;

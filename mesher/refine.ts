@@ -1,28 +1,12 @@
 import { Cavity } from './cavity.ts';
-import type { SharpCorner } from './corners.ts';
 import { MesherError } from './errors.ts';
 import { tooMany } from './estimate.ts';
 import { type Fan, fillCavity, makeFan } from './fan.ts';
 import { type HalfEdgeMesh, next, previous } from './half-edge.ts';
-import type { Hooks } from './hooks.ts';
 import { IntQueue } from './queue.ts';
-import type { SizeField } from './size-field.ts';
+import type { RefineGoal } from './refine-goal.ts';
 import { tieSlack } from './slack.ts';
 import { SegmentSplitter } from './split-segments.ts';
-
-/** What refinement works towards. */
-export interface RefineGoal extends Hooks {
-  /** Longest edge wanted, at a triangle's centroid or a segment's middle. */
-  readonly size: SizeField | number;
-  /** Degrees. */
-  readonly minAngle: number;
-  readonly maxVertices: number;
-  /** For the progress told: about how many vertices there will be. */
-  readonly expected: number;
-  readonly corners: readonly SharpCorner[];
-  /** Per vertex of the first triangulation: pieces longer than this may be halved at a sharp corner come what may. */
-  readonly granted: Float64Array;
-}
 
 /**
  * Delaunay refinement in place: until no segment is encroached upon or too long and no triangle is too large or has

@@ -4,7 +4,7 @@ import { type Fan, fillCavity, makeFan } from './fan.ts';
 import { grownInt, type HalfEdgeMesh, next, previous } from './half-edge.ts';
 import { orient } from './predicates.ts';
 import { IntQueue } from './queue.ts';
-import type { RefineGoal } from './refine.ts';
+import type { RefineGoal } from './refine-goal.ts';
 import { rightAngleSlack, tieSlack } from './slack.ts';
 import { splitPlace } from './split-place.ts';
 

@@ -2,14 +2,13 @@ import type { Chain, Curve, Domain, Piece, Point } from '../../mesher/index.ts';
 import { pointAt } from '../../mesher/index.ts';
 import { seededRandom } from '../support/random-domain.ts';
 import { polyomino, shuffledPolygon } from './random-outlines.ts';
+import { at, between, crossing, distance, gap, type Segment } from './segments.ts';
 
 /** What a random drawing is made of, so that a failure can be told in words. */
 export interface RandomDrawing {
   readonly domain: Domain;
   readonly summary: string;
 }
-
-type Segment = readonly [Point, Point];
 
 /**
  * A compartment of 3 to 200 corners that is not star-shaped as a rule, with 0 to 12 holes (polygons and circles, some
@@ -300,36 +299,6 @@ function ring(points: readonly Point[]): Segment[] {
   return points.map((p, i) => [p, at(points, i + 1)]);
 }
 
-export function at(points: readonly Point[], i: number): Point {
-  return points[i % points.length] ?? [0, 0];
-}
-
-function between(p: Point, q: Point, share: number): Point {
-  return [p[0] + share * (q[0] - p[0]), p[1] + share * (q[1] - p[1])];
-}
-
-function distance(p: Point, q: Point): number {
-  return Math.hypot(p[0] - q[0], p[1] - q[1]);
-}
-
 function touches([a, b]: Segment, p: Point): boolean {
   return a === p || b === p;
-}
-
-export function crossing([a, b]: Segment, [c, d]: Segment): boolean {
-  const side = (p: Point, q: Point, r: Point): number =>
-    (q[0] - p[0]) * (r[1] - p[1]) - (q[1] - p[1]) * (r[0] - p[0]);
-  return side(a, b, c) * side(a, b, d) < 0 && side(c, d, a) * side(c, d, b) < 0;
-}
-
-/** Distance between two segments. */
-export function gap(s: Segment, r: Segment): number {
-  if (crossing(s, r)) return 0;
-  return Math.min(toSegment(s[0], r), toSegment(s[1], r), toSegment(r[0], s), toSegment(r[1], s));
-}
-
-function toSegment(p: Point, [a, b]: Segment): number {
-  const square = (b[0] - a[0]) ** 2 + (b[1] - a[1]) ** 2;
-  const share = square > 0 ? ((p[0] - a[0]) * (b[0] - a[0]) + (p[1] - a[1]) * (b[1] - a[1])) / square : 0;
-  return distance(p, between(a, b, Math.min(1, Math.max(0, share))));
 }

@@ -1,5 +1,5 @@
 import type { Point } from '../../mesher/index.ts';
-import { at, crossing, gap } from './random-drawing.ts';
+import { at, crossing, gap } from './segments.ts';
 
 /** Simple polygons in the unit square that are not star-shaped as a rule, counter-clockwise. */
 
