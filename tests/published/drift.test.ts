@@ -122,6 +122,28 @@ describe('constant drift in the plane', () => {
   );
 });
 
+describe('a drift that is no slope', () => {
+  check(
+    'disk-A',
+    'turning about the middle changes no time of a disc: u = (1 − r²)/4, solved as irreversible [b·∇u = 0]',
+    {
+      drawing: { outline: { circle: [0, 0], radius: 1 } },
+      walls: { rim: { on: 'outline' } },
+      kinds: { rim: 'absorbing' },
+      particle: {
+        diffusion: 1,
+        drift: { x: { expression: '-10*y', unit: '1' }, y: { expression: '10*x', unit: '1' } },
+      },
+    },
+    {
+      'u(0)': mean(point(0, 0), 1 / 4),
+      'u(1/2)': mean(pin(0.3, 0.4), 3 / 16),
+      average: mean(everywhere, 1 / 8),
+    },
+    within,
+  );
+});
+
 describe('a pull towards the middle (Ornstein–Uhlenbeck)', () => {
   const pulls = {
     'strip-OU-k1': { words: 'by its component −x', drift: { x: { expression: '-x', unit: '1' }, y: 0 } },

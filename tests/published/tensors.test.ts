@@ -59,4 +59,31 @@ describe('diffusion that depends on direction', () => {
     },
     within,
   );
+
+  // With D = diag((1+x)², 1) nothing depends on y: the strip with D = (1+x)² (METHODS 1).
+  for (const [noise, time] of [
+    ['ito', 1 - Math.LN2],
+    ['isothermal', Math.LN2 - 1 / 2],
+  ] as const) {
+    check(
+      'strip-RA-varD',
+      `a tensor that varies along the strip only, ${noise} noise: as D = (1+x)² [Gardiner ch. 4; Lau & Lubensky 2007]`,
+      {
+        drawing: { outline: { rectangle: [0, 0, 1, 0.25] } },
+        walls: { right: { on: 'outline', where: 'x == 1' } },
+        kinds: { right: 'absorbing' },
+        particle: {
+          diffusion: {
+            tensor: [
+              [{ expression: '(1+x)^2', unit: '1' }, 0],
+              [0, 1],
+            ],
+          },
+          noise,
+        },
+      },
+      { 'u(0)': mean(point(0, 0.1), time) },
+      within,
+    );
+  }
 });
