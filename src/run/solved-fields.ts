@@ -41,7 +41,8 @@ export function solveFields(
   const shares = new Map(byExit.map((field, exit) => [exits[exit] ?? '', field]));
   const loses = problem.media.some((medium) => medium.loss);
   if (loses) shares.set(lost, lostShare(system, hooks('solving for the share lost', 1, 1)));
-  const conducted = loses ? {} : conductances(system, problem.depth, exits, byExit);
+  // Between one exit and nothing there is no difference to conduct by.
+  const conducted = loses || exits.length < 2 ? {} : conductances(system, problem.depth, exits, byExit);
   return {
     meanExitTime: time,
     shares,

@@ -19,6 +19,7 @@ describe('tarry solve', () => {
 
   it('prints one JSON object for one layout and start, an array for several', () => {
     const one = JSON.parse(runTarry(['solve', square(), '--json']).out) as Answers;
+    expect(one.conductance).toBeUndefined(); // one exit alone conducts nothing
     expect(one.mean.value).toBeCloseTo(1 / 3, 4);
     expect(one.mean.kind).toBe('estimate');
     expect(one.mean.low).toBeUndefined();
