@@ -33,7 +33,7 @@ class Refinement {
   readonly #large = new IntQueue();
   readonly #skinny = new IntQueue();
   readonly #hit: number[] = [];
-  /** Per triangle: bits of the queues it waits in. */
+  /** Per triangle: what is wrong with it while it waits in a queue. */
   #waits = new Uint8Array(1024);
   #grading = false;
   #steps = 0;
@@ -62,11 +62,11 @@ class Refinement {
     while (this.#large.count + this.#skinny.count > 0) {
       const isLarge = this.#large.count > 0;
       const t = isLarge ? this.#large.shift() : this.#skinny.shift();
-      this.#waits[t] &= isLarge ? ~badSize : ~badAngle;
-      const state = this.#quality(t);
-      if (state === 0) continue;
-      if (!isLarge && state & badSize) this.#push(t, badSize);
-      else this.#improve(t, state);
+      const state = isLarge ? badSize : badAngle;
+      // An entry is stale when the triangle has been replaced by a better one since.
+      if (this.#waits[t] !== state) continue;
+      this.#waits[t] = 0;
+      this.#improve(t, state);
       this.#poll();
     }
   }
@@ -89,19 +89,15 @@ class Refinement {
     this.#waits = more;
   }
 
-  #push(t: number, bit: number): void {
-    if (this.#waits[t] & bit) return;
-    this.#waits[t] |= bit;
-    (bit === badSize ? this.#large : this.#skinny).push(t);
-  }
-
   #grade(t: number): void {
     const state = this.#quality(t);
-    if (state & badSize) this.#push(t, badSize);
-    else if (state & badAngle) this.#push(t, badAngle);
+    if (state === this.#waits[t]) return;
+    this.#waits[t] = state;
+    if (state === badSize) this.#large.push(t);
+    else if (state === badAngle) this.#skinny.push(t);
   }
 
-  /** Bits of what is wrong with a triangle: too long an edge for its place, too small an angle. */
+  /** What is wrong with a triangle: too long an edge for its place, else too small an angle, else 0. */
   #quality(t: number): number {
     const { xy, from } = this.#mesh;
     const a = 2 * from[3 * t];
@@ -122,9 +118,8 @@ class Refinement {
     const shortest = Math.min(ab, ac, bc);
     const middle = ab + ac + bc - longest - shortest;
     const twice = ux * wy - uy * wx;
-    let state = longest > h * h * (1 + tieSlack) ? badSize : 0;
-    if (twice * twice < this.#sinSquare * longest * middle) state |= badAngle;
-    return state;
+    if (longest > h * h * (1 + tieSlack)) return badSize;
+    return twice * twice < this.#sinSquare * longest * middle ? badAngle : 0;
   }
 
   /** Puts a point where the triangle is worst off, or splits the segments that such a point would come near. */

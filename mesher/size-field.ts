@@ -12,7 +12,8 @@ export type SizeField = (x: number, y: number) => number;
 export function makeSizeField(options: MeshOptions, fallback: number): SizeField | number {
   const most = options.maxSize ?? fallback;
   const growth = options.growth ?? 0.2;
-  const near = options.sources?.length ? fromSources(options.sources, growth, most) : undefined;
+  const sources = options.sources ?? [];
+  const near = sources.length > 0 ? fieldOf(sources, growth, most) : undefined;
   const own = options.size;
   if (!near && !own) return most;
   return (x, y) => {
@@ -20,6 +21,24 @@ export function makeSizeField(options: MeshOptions, fallback: number): SizeField
     if (own) {
       const wanted = own(x, y);
       if (wanted < h) h = wanted;
+    }
+    return h;
+  };
+}
+
+/** Up to this many sources looking at each is quicker than a tree. */
+const fewSources = 16;
+
+function fieldOf(sources: readonly SizeSource[], growth: number, most: number): SizeField {
+  if (sources.length > fewSources) return fromSources(sources, growth, most);
+  const list = Float64Array.from(sources.flatMap(({ at, size }) => [at[0], at[1], size]));
+  return (x, y) => {
+    let h = most;
+    for (let i = 0; i < list.length; i += 3) {
+      const dx = x - list[i];
+      const dy = y - list[i + 1];
+      const here = list[i + 2] + growth * Math.sqrt(dx * dx + dy * dy);
+      if (here < h) h = here;
     }
     return h;
   };
