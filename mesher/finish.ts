@@ -1,5 +1,5 @@
 import { chordSag } from './curves.ts';
-import { type HalfEdgeMesh, next, previous } from './half-edge.ts';
+import { grownFloat, type HalfEdgeMesh, next, previous } from './half-edge.ts';
 import type { Mesh } from './mesh.ts';
 
 /**
@@ -14,11 +14,25 @@ export function finishMesh(mesh: HalfEdgeMesh, regionSets: readonly (readonly nu
     return s < 0 ? opposite[e] < 0 : tags[segmentCurve[s]] >= 0;
   };
   const triangles = new Int32Array(corners).fill(-1);
-  const nodeVertex: number[] = [];
+  const onWall = wallVertices(mesh);
+  const nodeOf = new Int32Array(mesh.vertexCount).fill(-1);
+  let nodes = new Float64Array(2 * mesh.vertexCount);
+  let count = 0;
+  const addNode = (v: number): number => {
+    if (2 * count === nodes.length) nodes = grownFloat(nodes, 2 * count + 2);
+    nodes[2 * count] = mesh.xy[2 * v];
+    nodes[2 * count + 1] = mesh.xy[2 * v + 1];
+    return count++;
+  };
   for (let e = 0; e < corners; e++) {
     if (triangles[e] >= 0) continue;
-    const node = nodeVertex.length;
-    nodeVertex.push(from[e]);
+    const v = from[e];
+    if (!onWall[v]) {
+      if (nodeOf[v] < 0) nodeOf[v] = addNode(v);
+      triangles[e] = nodeOf[v];
+      continue;
+    }
+    const node = addNode(v);
     // Clockwise to the first wall, then counter-clockwise through the whole part.
     let start = e;
     while (!isWall(start)) {
@@ -33,14 +47,20 @@ export function finishMesh(mesh: HalfEdgeMesh, regionSets: readonly (readonly nu
       at = opposite[back];
     } while (at !== start);
   }
-  const nodes = new Float64Array(2 * nodeVertex.length);
-  nodeVertex.forEach((v, node) => {
-    nodes[2 * node] = mesh.xy[2 * v];
-    nodes[2 * node + 1] = mesh.xy[2 * v + 1];
-  });
   const walls = listWalls(mesh, triangles, isWall);
   const regionSet = mesh.regionSet.slice(0, mesh.triangleCount);
-  return { nodes, triangles, regionSet, regionSets, ...walls };
+  return { nodes: nodes.slice(0, 2 * count), triangles, regionSet, regionSets, ...walls };
+}
+
+/** Per vertex: 1 where a wall segment ends. */
+function wallVertices(mesh: HalfEdgeMesh): Uint8Array {
+  const onWall = new Uint8Array(mesh.vertexCount);
+  for (let s = 0; s < mesh.segmentCount; s++) {
+    if (mesh.tags[mesh.segmentCurve[s]] < 0) continue;
+    onWall[mesh.segmentFrom[s]] = 1;
+    onWall[mesh.segmentTo[s]] = 1;
+  }
+  return onWall;
 }
 
 function listWalls(

@@ -75,6 +75,8 @@ function build(origin: Origin, options: MeshOptions): Mesh {
   const maxVertices = options.maxNodes ?? meshDefaults.maxNodes;
   const minAngle = options.minAngle ?? meshDefaults.minAngle;
   const expected = requireFeasible(start, size, corners, maxVertices) / 2;
+  // Room for what is expected: growing by doubling would copy everything again and hold both copies at the peak.
+  refined.reserve(Math.ceil(1.04 * expected), Math.ceil(2.08 * expected), 0);
   const hooks = {
     ...(options.stop ? { stop: options.stop } : {}),
     ...(options.progress ? { progress: options.progress } : {}),
