@@ -49,7 +49,7 @@ const before = process.resourceUsage().maxRSS;
 const large = report(sized('square', 0.00182), 3);
 const after = process.resourceUsage().maxRSS;
 console.log(
-  `growth of time with count: exponent ${exponent(small, mid)} to 0.5M, ${exponent(mid, large)} to 1.5M`,
+  `growth of time with count: exponent ${exponent(small, large)} from 0.05M to 1.5M (${exponent(small, mid)} to 0.5M, ${exponent(mid, large)} from there)`,
 );
 console.log(
   `peak memory: ${((after * 1024) / large.triangles).toFixed(0)} bytes a triangle all in all at 1.5M (of it ${((before * 1024) / large.triangles).toFixed(0)} there before)`,
