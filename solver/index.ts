@@ -37,6 +37,15 @@ export type {
   Tensor,
   Wall,
 } from './problem/problem.ts';
+export {
+  type Adapted,
+  type AdaptOptions,
+  type AdaptRound,
+  type AdaptSteps,
+  adaptDefaults,
+  adaptUntil,
+  type Measured,
+} from './trust/adapt.ts';
 export type { Bracketed } from './trust/bracketed.ts';
 export { type BracketStart, type Brackets, prepareBrackets } from './trust/brackets.ts';
 export type { RateBounds } from './trust/eigenvalue-bounds.ts';

@@ -13,8 +13,9 @@ import {
   evenSource,
 } from './element-sources.ts';
 import { type GalerkinSolution, galerkinSolution, scaledSolution } from './galerkin-solution.ts';
-import { errorNorm, goalBracket, goalIndicators } from './goal-bracket.ts';
+import { errorNorm, goalBracket } from './goal-bracket.ts';
 import { shareProblems } from './share-problems.ts';
+import { widthShares } from './width-shares.ts';
 
 /** A start that brackets can be given for; lengths in the case's length unit. */
 export type BracketStart =
@@ -47,8 +48,8 @@ export interface Brackets {
   readonly rate: () => RateBounds;
   /** 1/λ₁. */
   readonly decayTime: () => Bracketed;
-  /** ‖r_u‖_T‖r_z‖_T per triangle: where the mesh should be finer for the mean of this start. */
-  readonly indicators: (start: BracketStart) => Float64Array;
+  /** What each triangle adds to the width of the mean's bracket: where the mesh should be finer. */
+  readonly widthShares: (start: BracketStart) => Float64Array;
   /** Whether a start is taken as it is, as the disc that stands for a point exactly, or as a spot in its place. */
   readonly takenAs: (start: BracketStart) => 'itself' | 'disc' | 'spot';
 }
@@ -131,7 +132,7 @@ export function prepareBrackets(system: System, problem: Problem, hooks: Hooks =
     },
     standardDeviation: (start) => deviation(mean(start), secondMoment(start)),
     decayTime: () => between(1 / rate().high, 1 / rate().low),
-    indicators: (start) => goalIndicators(meanSolution(), dual(start).solution),
+    widthShares: (start) => widthShares(base, meanSolution(), dual(start).solution),
     takenAs: (start) => dual(start).takenAs,
   };
 }

@@ -50,12 +50,3 @@ export function goalBracket(base: ConsistentSystem, u: GalerkinSolution, dual: G
   }
   return about(middle, half + summing * size);
 }
-
-/** Local error indicators of a goal: ‖r_u‖_T‖r_z‖_T per triangle. */
-export function goalIndicators(u: GalerkinSolution, dual: GalerkinSolution): Float64Array {
-  return u.norm.map((norm, t) => {
-    const ou = u.oscillation ? u.oscillation[t] : 0;
-    const oz = dual.oscillation ? dual.oscillation[t] : 0;
-    return (norm + ou) * (dual.norm[t] + oz);
-  });
-}
