@@ -11,7 +11,7 @@ import { type BenchDomain, graded, sized } from '../bench/mesher-domains.ts';
  * field, in one run, order swapped every round: throughput in triangles per CPU second (warm, median of three),
  * triangle count, and peak resident memory of the first mesh in a process less that of an idle process. Needs g++, libcgal-dev, libgmp-dev and libmpfr-dev.
  *
- * Run after `npm run build`: node dist/tests/outside/mesher-cgal.js
+ * Run after `npm run build`: npm run outside -- mesher
  */
 
 interface Outcome {
