@@ -132,9 +132,9 @@ export interface Asked {
   readonly text: string;
   readonly figure: Figure;
   readonly start: string;
+  /** Counts those that are caught, not those that are lost; absent: whatever ends first. */
+  readonly counts?: 'caught';
   readonly limit?: { readonly kind: 'under' | 'atLeast'; readonly value: number; readonly text: string };
-  /** Why this version does not give the figure, in words; absent when it does. */
-  readonly notAvailable?: string;
 }
 
 /** What the answers are to hold beside what is always given. */

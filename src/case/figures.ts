@@ -19,10 +19,6 @@ const forms =
 export const figureDimension = (figure: Figure): Dimension =>
   figure.kind === 'share' || figure.kind === 'still inside' ? 'fraction' : 'time';
 
-/** Name of a figure in the table of what is not available yet. */
-export const figureTopic = (figure: Figure): string =>
-  figure.kind === 'share' && figure.by !== undefined ? 'share by' : figure.kind;
-
 /**
  * Reads a figure as it is asked for (CASE.md, Asked). Times in the case's time unit, fractions 0 to 1.
  *

@@ -6,20 +6,9 @@
 const words = {
   'density start': 'starts by a density',
   'table start': 'starts from a table',
-  'standard deviation': 'the standard deviation',
-  median: 'the median time',
-  'time to': 'times to N %',
-  'share by': 'shares by a time',
-  'time to leave by': 'times for N % to leave by one wall',
-  'still inside': 'the chance of still being inside',
-  'time in': 'the time in a region',
-  'decay time': 'the decay time',
   within: 'what ranges of inputs do to the answers',
   bracket: 'a guaranteed bracket of a given width',
   paths: 'the check by trajectories',
-  survivalAt: 'survival at given times',
-  occupationOf: 'the time spent in regions',
-  moments: 'higher moments',
   field: 'fields other than mean and shares',
 } as const;
 

@@ -1,6 +1,6 @@
 import type { Accuracy, Asked, Figure, Report } from './case.ts';
 import type { CaseContext } from './case-context.ts';
-import { type FigureNames, figureDimension, figureTopic, parseFigure } from './figures.ts';
+import { type FigureNames, figureDimension, parseFigure } from './figures.ts';
 import { joinKey } from './key-path.ts';
 import { suggestName } from './nearest-name.ts';
 import type { RawAsked, RawCase } from './schema.ts';
@@ -42,16 +42,27 @@ export function readAsked(
         suggestName(start, starts, 'start'),
       );
     }
-    const told = ctx.notYet(figureTopic(figure), `figure ${JSON.stringify(asked.figure)}`);
     const limit = readLimit(asked, figure, key, ctx);
+    const counts = readCounts(asked, figure, key, ctx);
     return {
       text: asked.figure,
       figure,
       start,
+      ...(counts === undefined ? {} : { counts }),
       ...(limit === undefined ? {} : { limit }),
-      ...(told === undefined ? {} : { notAvailable: told }),
     };
   });
+}
+
+function readCounts(raw: RawAsked, figure: Figure, key: string, ctx: CaseContext): 'caught' | undefined {
+  if (raw.counts !== 'caught') return undefined;
+  if (figure.kind === 'median' || figure.kind === 'time to') return 'caught';
+  return ctx.fail(
+    'CASE_VALUE_WRONG',
+    `"counts": "caught" says nothing of the figure ${JSON.stringify(raw.figure)}`,
+    joinKey(key, 'counts'),
+    'Leave it out; it is for "median" and "time to N %"',
+  );
 }
 
 function readLimit(raw: RawAsked, figure: Figure, key: string, ctx: CaseContext): Asked['limit'] {
@@ -106,10 +117,13 @@ export function readAccuracy(raw: RawCase['accuracy'], asked: readonly Asked[], 
   };
 }
 
+/** Moments that are given unasked: the mean, and the second for the standard deviation. */
+export const leastMoments = 2;
+
 /** Reads `report`; undefined when there is none. */
 export function readReport(raw: RawCase['report'], names: FigureNames, ctx: CaseContext): Report | undefined {
   if (raw === undefined) return undefined;
-  const { survivalAt = [], occupationOf = [], moments = 1, field = [] } = raw;
+  const { survivalAt = [], occupationOf = [], moments = leastMoments, field = [] } = raw;
   const times = survivalAt.map(
     (time, i) => ctx.positive(time, 'time', joinKey('report.survivalAt', i)).value,
   );
@@ -125,9 +139,6 @@ export function readReport(raw: RawCase['report'], names: FigureNames, ctx: Case
   const figures = field.map((text, i) =>
     parseFigure(text, names, ctx.units, ctx.refuseAt(joinKey('report.field', i))),
   );
-  if (times.length > 0) ctx.notYet('survivalAt', 'report.survivalAt');
-  if (occupationOf.length > 0) ctx.notYet('occupationOf', 'report.occupationOf');
-  if (moments > 1) ctx.notYet('moments', 'report.moments');
   for (const [i, figure] of figures.entries()) {
     const isGiven = figure.kind === 'mean' || (figure.kind === 'share' && figure.by === undefined);
     if (!isGiven) ctx.notYet('field', `report.field ${JSON.stringify(field[i])}`);

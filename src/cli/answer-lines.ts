@@ -1,9 +1,10 @@
 import type { Asked, Case, Layout, Start } from '../case/case.ts';
+import { figureDimension } from '../case/figures.ts';
 import { formatNumber, formatQuantity, readableUnit } from '../case/format-quantity.ts';
-import { canBeLost } from '../case/read-particle.ts';
-import type { Answers } from '../run/answers.ts';
-import { askedOf, figureValue } from '../run/asked.ts';
+import type { Answer, Answers, AskedAnswer } from '../run/answers.ts';
+import { askedOf } from '../run/asked.ts';
 import { cautionsOf } from '../run/cautions.ts';
+import { figureWords } from './figure-words.ts';
 import { type Column, tableLines, wrapped } from './table.ts';
 
 const lineWidth = 100;
@@ -24,7 +25,9 @@ export function answerLines(
     const rows = answers.filter((one) => one.start === start.name);
     const asked = askedOf(theCase, start.name, chosenStart !== undefined);
     if (asked.length === 0) lines.push(...figureLines(theCase, start, undefined, layouts, rows), '');
-    for (const one of asked) lines.push(...figureLines(theCase, start, one, layouts, rows), '');
+    for (const [index, one] of asked.entries()) {
+      lines.push(...figureLines(theCase, start, { ...one, index }, layouts, rows), '');
+    }
     lines.push(...shareLines(theCase, start, rows), '');
   }
   lines.push(...numberLines(theCase, layouts, answers), '', 'e: estimated, not proven.', '');
@@ -62,12 +65,17 @@ function numberLines(theCase: Case, layouts: readonly Layout[], answers: readonl
       const value = of(one);
       return value === undefined ? '' : formatNumber(value, 3);
     }),
+    formatQuantity(one.numbers.lowestTime ?? 0, 'time', theCase.units, { digits: 2 }),
   ]);
   const extent = formatQuantity(solved[0]?.numbers.longestExtent ?? 0, 'length', theCase.units);
   return [
     `what rules each layout, L = ${extent}`,
     ...tableLines(
-      [{ title: 'layout', align: 'left' }, ...columns.map(([title]): Column => ({ title, align: 'right' }))],
+      [
+        { title: 'layout', align: 'left' },
+        ...columns.map(([title]): Column => ({ title, align: 'right' })),
+        { title: 'times from', align: 'right' },
+      ],
       rows,
     ),
   ];
@@ -81,53 +89,59 @@ export function startWords(start: Start): string {
   return `released at ${start.name}`;
 }
 
+/** What is asked, with its place among what is asked of its start: the answers are in that order. */
+type AskedAt = Asked & { readonly index: number };
+
 function figureLines(
   theCase: Case,
   start: Start,
-  asked: Asked | undefined,
+  asked: AskedAt | undefined,
   layouts: readonly Layout[],
   answers: readonly Answers[],
 ): string[] {
-  const share = asked?.figure.kind === 'share';
-  const dimension = share ? 'fraction' : 'time';
-  const figureOf = (row: Answers) => (asked ? figureValue(asked, row) : row.mean);
+  const dimension = asked ? figureDimension(asked.figure) : 'time';
+  const figureOf = (row: Answers): AskedAnswer | Answer | undefined =>
+    asked ? row.asked[asked.index] : row.mean;
   const largest = Math.max(0, ...answers.map((row) => figureOf(row)?.value ?? 0));
   const unit = readableUnit(largest, dimension, theCase.units);
   const show = (value: number): string => formatQuantity(value, dimension, theCase.units, { unit });
   const columns: Column[] = [
     { title: 'layout', align: 'left' },
-    { title: share ? 'share' : 'time', align: 'right' },
+    { title: dimension === 'time' ? 'time' : 'share', align: 'right' },
     { title: '', align: 'left' },
     { title: asked?.limit ? 'verdict' : '', align: 'left' },
     { title: 'against ref', align: 'right' },
   ];
   const rows = layouts.map((layout): string[] => {
     const row = answers.find((one) => one.layout === layout.name);
-    const figure = row && figureOf(row);
-    if (!row || !figure) return [layout.name, 'not available yet'];
+    if (!row) return [layout.name, 'not available yet'];
+    const figure = figureOf(row);
+    const limits = verdict(asked, figure?.value, show);
+    if (figure?.value === null || figure?.value === undefined) {
+      const never = figure && 'never' in figure ? figure.never : undefined;
+      const most = never && formatQuantity(never.atMost, 'fraction', theCase.units);
+      return [layout.name, most === undefined ? '–' : `never: at most ${most}`, '', limits];
+    }
     const mark = figure.kind === 'guaranteed' ? 's' : 'e';
-    return [
-      layout.name,
-      show(figure.value),
-      mark,
-      verdict(asked, figure.value, show),
-      against(theCase, row, asked, show),
-    ];
+    return [layout.name, show(figure.value), mark, limits, against(theCase, row, asked, show)];
   });
   const limit = asked?.limit
     ? `; must be ${asked.limit.kind === 'under' ? 'under' : 'at least'} ${asked.limit.text}`
     : '';
-  return [`${figureWords(theCase, asked)}, ${startWords(start)}${limit}`, ...tableLines(columns, rows)];
+  return [
+    `${figureWords(theCase, layouts, asked)}, ${startWords(start)}${limit}`,
+    ...tableLines(columns, rows),
+  ];
 }
 
-function figureWords({ particle }: Case, asked: Asked | undefined): string {
-  if (asked && asked.figure.kind !== 'mean') return asked.text;
-  return canBeLost(particle) ? 'mean time to leave or be lost' : 'mean exit time';
-}
-
-function verdict(asked: Asked | undefined, value: number, show: (value: number) => string): string {
-  if (!asked?.limit) return '';
+function verdict(
+  asked: Asked | undefined,
+  value: number | null | undefined,
+  show: (value: number) => string,
+): string {
+  if (!asked?.limit || value === undefined) return '';
   const { kind, value: limit } = asked.limit;
+  if (value === null) return kind === 'under' ? 'misses' : 'meets';
   const spare = kind === 'under' ? limit - value : value - limit;
   return spare >= 0 ? `meets, ${show(spare)} to spare` : `misses by ${show(-spare)}`;
 }
@@ -135,12 +149,12 @@ function verdict(asked: Asked | undefined, value: number, show: (value: number) 
 function against(
   theCase: Case,
   row: Answers,
-  asked: Asked | undefined,
+  asked: AskedAt | undefined,
   show: (value: number) => string,
 ): string {
   if (row.layout === theCase.reference) return 'ref';
   // The difference of an answer is of its first asked figure only.
-  if (!row.difference || (asked && row.asked[0]?.figure !== asked.text)) return '';
+  if (!row.difference || (asked && asked.index > 0)) return '';
   const { value } = row.difference;
   return value > 0 ? `+${show(value)}` : show(value);
 }

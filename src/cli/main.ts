@@ -49,7 +49,7 @@ export async function main(words: readonly string[]): Promise<number> {
     );
   program
     .command('solve')
-    .description('mean exit times and shares, for one layout or each')
+    .description('answers for one layout or each')
     .argument('<case>', 'case file, or - for standard input')
     .option('--layout <name>', 'only this layout')
     .option('--start <name>', 'only this start')

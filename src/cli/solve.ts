@@ -28,9 +28,7 @@ export async function solve(path: string, options: SolveOptions): Promise<number
     .filter((one) => wanted.has(one.name) || (one.name === theCase.reference && !one.notAvailable))
     .map((one) => one.name);
   const solved = await solveLayouts(input, names, start, options.command);
-  const answers = withDifferences(theCase, solved, start !== undefined).filter((one) =>
-    wanted.has(one.layout),
-  );
+  const answers = withDifferences(theCase.reference, solved).filter((one) => wanted.has(one.layout));
   if (options.json) {
     const one = chosen.length === 1 && answers.length === 1;
     console.log(JSON.stringify(one ? answers[0] : answers, undefined, 2));

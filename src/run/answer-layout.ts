@@ -1,11 +1,13 @@
 import { locate, type Mesh, meshDomain, meshQuality } from '../../mesher/index.ts';
-import { assemble, exitDensity, roundingFloor, valueFromStart } from '../../solver/index.ts';
+import { assemble, exitDensity, roundingFloor } from '../../solver/index.ts';
 import type { Case, Layout } from '../case/case.ts';
 import { CaseError } from '../case/errors.ts';
 import { type LayoutDomain, layoutDomain } from '../case/layout-domain.ts';
-import type { Answer, Answers } from './answers.ts';
+import { leastMoments } from '../case/read-asked.ts';
+import type { Answers, Reading } from './answers.ts';
 import { answerAsked, askedOf } from './asked.ts';
 import { cautionsOf, references } from './cautions.ts';
+import { solveFigures } from './figures.ts';
 import { compartmentArea, meshOptions } from './mesh-options.ts';
 import { inCaseTerms } from './name-places.ts';
 import { physicsNumbers } from './physics-numbers.ts';
@@ -78,81 +80,115 @@ function solveLayout(
   const mesh = meshDomain(domain.domain, { ...sizes, ...hooks('triangulating', 0, 0.3) });
   const meshed = clock();
   const problem = domain.problem(mesh.regionSets);
-  const system = assemble(mesh, problem, hooks('assembling', 0.3, 0.5));
-  const fields = solveFields(system, problem, domain.exits, (doing, from, to) =>
-    hooks(doing, 0.5 + 0.45 * from, 0.5 + 0.45 * to),
+  const system = assemble(mesh, problem, hooks('assembling', 0.3, 0.4));
+  const order = theCase.report?.moments ?? leastMoments;
+  const fields = solveFields(
+    system,
+    problem,
+    domain.exits,
+    Math.max(order, leastMoments),
+    (doing, from, to) => hooks(doing, 0.4 + 0.2 * from, 0.4 + 0.2 * to),
   );
-  const { meanExitTime: time, shares } = fields;
   const places = locate(mesh);
-  const sameForAll = {
+  const placed = (start: AnswerableStart, key: 'starts' | 'pins'): Float64Array =>
+    startWeights(theCase, domain, mesh, places, start, key);
+  const starts = theCase.starts
+    .filter(isAnswerable)
+    .filter(({ name }) => !options.starts || options.starts.includes(name))
+    .map((start) => ({
+      name: start.name,
+      weights: placed(start, 'starts'),
+      asked: askedOf(theCase, start.name, options.starts !== undefined),
+    }));
+  const pins = theCase.pins.map(({ name, at }) => ({
+    name,
+    weights: placed({ kind: 'point', name, at }, 'pins'),
+  }));
+  const numbers = physicsNumbers(mesh, problem);
+  const figures = solveFigures(
+    { theCase, problem, system, fields, starts, lowestTime: numbers.lowestTime ?? 0 },
+    (doing, from, to) => hooks(doing, 0.6 + 0.35 * from, 0.6 + 0.35 * to),
+  );
+  const pinReadings = Object.fromEntries(pins.map(({ name, weights }) => [name, figures.reading(weights)]));
+  const ofLayout = {
+    layout: layout.name,
     reversible: system.cycle === undefined,
     ...(fields.conductance && { conductance: fields.conductance }),
     mesh: meshFacts(mesh, domain),
     numbers: {
-      ...physicsNumbers(mesh, problem),
-      roundingFloor: roundingFloor(system, time),
+      ...numbers,
+      roundingFloor: roundingFloor(system, fields.meanExitTime),
       negativeRates: system.negativeRates.count,
     },
     warnings: [
       ...physicsWarnings(theCase, mesh, places, problem, system),
+      ...figures.warnings,
       ...theCase.warnings,
       ...theCase.notAvailable,
     ],
-    cautions: cautionsOf(theCase),
   };
-  const starts = theCase.starts
-    .filter(isAnswerable)
-    .filter((start) => !options.starts || options.starts.includes(start.name));
-  const weightsOf = (start: AnswerableStart, key: 'starts' | 'pins'): Float64Array =>
-    startWeights(theCase, domain, mesh, places, start, key);
-  const pins = theCase.pins.map((pin) => ({
-    name: pin.name,
-    weights: weightsOf({ kind: 'point', name: pin.name, at: pin.at }, 'pins'),
-  }));
-  const named = (weights: Float64Array): Record<string, Answer> =>
-    Object.fromEntries([...shares].map(([name, field]) => [name, estimate(weights, field)]));
+  const made = { version, at: options.at, command: options.command };
   const caughtAt: Float64Array[] = [];
-  const answers = starts.map((start): Answers => {
-    const weights = weightsOf(start, 'starts');
+  const answers = starts.map(({ name, weights, asked }): Omit<Answers, 'made'> => {
     caughtAt.push(exitDensity(system, weights, hooks('solving for the walls', 0.95, 1)).caught);
-    const mean = estimate(weights, time);
-    const byExit = named(weights);
-    return {
-      tarry: 1,
-      case: theCase.title,
-      caseHash: theCase.hash,
-      layout: layout.name,
-      start: start.name,
-      units: theCase.units.length === '' ? 'none' : theCase.units,
-      reversible: sameForAll.reversible,
-      mean,
-      shares: byExit,
-      ...(sameForAll.conductance && { conductance: sameForAll.conductance }),
-      pins: Object.fromEntries(
-        pins.map((pin) => [pin.name, { mean: estimate(pin.weights, time), shares: named(pin.weights) }]),
-      ),
-      asked: answerAsked(askedOf(theCase, start.name, options.starts !== undefined), {
-        mean,
-        shares: byExit,
-      }),
-      mesh: sameForAll.mesh,
-      numbers: sameForAll.numbers,
-      healed: theCase.drawing.healed,
-      taken: theCase.drawing.taken,
-      leftOut: theCase.drawing.leftOut,
-      warnings: sameForAll.warnings,
-      cautions: sameForAll.cautions,
-      references,
-      made: { version, at: options.at, command: options.command, seconds: { mesh: 0, solve: 0 } },
-    };
+    const reading = figures.reading(weights);
+    return answersOf(theCase, ofLayout, {
+      start: name,
+      ...reading,
+      moments: figures.moments(weights).slice(0, order),
+      ...figures.reported(weights),
+      pins: pinReadings,
+      asked: asked.map((one) => answerAsked(one, figures.value(one, weights))),
+    });
   });
   const seconds = { mesh: (meshed - began) / 1000, solve: (clock() - meshed) / 1000 };
   return {
-    answers: answers.map((one) => ({ ...one, made: { ...one.made, seconds } })),
+    answers: answers.map((one) => ({ ...one, made: { ...made, seconds } })),
     mesh,
     domain,
-    meanExitTime: time,
+    meanExitTime: fields.meanExitTime,
     caughtAt,
+  };
+}
+
+type OfLayout = Pick<Answers, 'layout' | 'reversible' | 'conductance' | 'mesh' | 'numbers' | 'warnings'>;
+type OfStart = Pick<
+  Answers,
+  'start' | 'moments' | 'pins' | 'asked' | 'decayTime' | 'survival' | 'occupation'
+> &
+  Reading;
+
+/** Puts together what answers.json holds, in the order of CASE.md. */
+function answersOf(theCase: Case, ofLayout: OfLayout, ofStart: OfStart): Omit<Answers, 'made'> {
+  const { layout, reversible, conductance, mesh, numbers, warnings } = ofLayout;
+  const { start, mean, sd, moments, times, shares, decayTime, survival, occupation, pins, asked } = ofStart;
+  return {
+    tarry: 1,
+    case: theCase.title,
+    caseHash: theCase.hash,
+    layout,
+    start,
+    units: theCase.units.length === '' ? 'none' : theCase.units,
+    reversible,
+    mean,
+    ...(sd && { sd }),
+    moments,
+    ...(times && { times }),
+    shares,
+    ...(conductance && { conductance }),
+    ...(decayTime && { decayTime }),
+    ...(survival && { survival }),
+    ...(occupation && { occupation }),
+    pins,
+    asked,
+    mesh,
+    numbers,
+    healed: theCase.drawing.healed,
+    taken: theCase.drawing.taken,
+    leftOut: theCase.drawing.leftOut,
+    warnings,
+    cautions: cautionsOf(theCase),
+    references,
   };
 }
 
@@ -164,9 +200,4 @@ function meshFacts(mesh: Mesh, { domain }: LayoutDomain): Answers['mesh'] {
     minAngle: meshQuality(mesh).minAngle,
     chordError: mesh.chordError,
   };
-}
-
-/** ∫ρ·field, the mesh's own value; nothing stands behind it yet but the mesh. */
-function estimate(weights: Float64Array, field: Float64Array): Answer {
-  return { value: valueFromStart(weights, field), kind: 'estimate' };
 }

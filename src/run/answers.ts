@@ -8,19 +8,54 @@ export interface Answer {
   readonly kind: 'guaranteed' | 'estimate';
 }
 
+/** A time that is never reached: no more than the fraction `atMost` ever gets there. */
+export interface Never {
+  readonly value: null;
+  readonly never: { readonly atMost: number };
+  readonly kind: Answer['kind'];
+}
+
+/** The time by which some part has left, where it ever does. */
+export type TimeAnswer = Answer | Never;
+
+/** Times to 50, 90, 95 and 99 %, by '50 %' and so on. */
+export type Times = Readonly<Record<string, TimeAnswer>>;
+
+/** A share, with the mean time of those that end there; without it where none does. */
+export interface ShareAnswer extends Answer {
+  readonly meanTime?: number;
+}
+
+/** What is answered at a place as for a start. */
+export interface Reading {
+  /** With loss: of leaving or being lost, whichever is first. */
+  readonly mean: Answer;
+  /** Left out where the second moment is beyond the largest number, as after wells of 350 kT. */
+  readonly sd?: Answer;
+  /** Left out where the decay cannot be followed in double precision. */
+  readonly times?: Times;
+  /** By exit, and with loss `lost`; they sum to 1. */
+  readonly shares: Readonly<Record<string, ShareAnswer>>;
+}
+
 export interface AskedAnswer {
   readonly figure: string;
-  readonly value?: number;
+  /** Time in the case's unit or fraction; null for a time that is never reached; absent where `warnings` says why. */
+  readonly value?: number | null;
+  readonly never?: Never['never'];
+  readonly low?: number;
+  readonly high?: number;
+  readonly kind?: Answer['kind'];
+  /** As asked: of those that are caught, not lost. */
+  readonly counts?: 'caught';
   readonly under?: number;
   readonly atLeast?: number;
   readonly verdict?: 'meets' | 'misses' | 'open';
   readonly margin?: { readonly value: number };
-  /** Said where this version does not compute the figure. */
-  readonly notAvailable?: true;
 }
 
 /** answers.json of one layout and one start (CASE.md); what is not computed is absent. */
-export interface Answers {
+export interface Answers extends Reading {
   readonly tarry: 1;
   readonly case: string;
   readonly caseHash: string;
@@ -29,18 +64,20 @@ export interface Answers {
   readonly units: { readonly length: string; readonly time: string } | 'none';
   /** As found by the solver, however the drift is stated; `warnings` says where it fails. */
   readonly reversible: boolean;
-  /** With loss: of leaving or being lost, whichever is first. */
-  readonly mean: Answer;
-  /** By exit, and with loss `lost`; they sum to 1. */
-  readonly shares: Readonly<Record<string, Answer>>;
+  /** E[τⁿ] for n = 1, 2, …, in the time unit to that power; as many as the case asks for, two without. */
+  readonly moments: readonly Answer[];
+  /** Inverse of the slowest rate of leaving: later on, half are gone after each ln 2 of it. */
+  readonly decayTime?: Answer;
+  /** Chance of being inside still, at the times the case asks for and in their order. */
+  readonly survival?: readonly ({ readonly t: number } & Answer)[];
+  /** By region the case asks for: mean time spent there, and what part of the mean time that is. */
+  readonly occupation?: Readonly<Record<string, Answer & { readonly fraction: number }>>;
   /**
    * By exit, per unit depth, in length²/time: without drift and loss, at a depth that is the same everywhere, and only
    * of exits that touch no other (METHODS 3).
    */
   readonly conductance?: Readonly<Record<string, Answer>>;
-  readonly pins: Readonly<
-    Record<string, { readonly mean: Answer; readonly shares: Readonly<Record<string, Answer>> }>
-  >;
+  readonly pins: Readonly<Record<string, Reading>>;
   readonly asked: readonly AskedAnswer[];
   readonly difference?: {
     readonly to: string;

@@ -1,31 +1,22 @@
-import type { Asked, Case } from '../case/case.ts';
 import type { Answers } from './answers.ts';
-import { askedOf, figureValue } from './asked.ts';
 
 /**
  * Adds to each answer how far its first asked figure (the mean, where nothing is asked) is from the reference
- * layout's for the same start. Left out where this version does not compute the figure.
+ * layout's for the same start. Left out where either is never reached or has no value.
  *
- * @param chosenStart true where the caller chose the start, see {@link askedOf}
+ * @param reference name of the reference layout
  */
-export function withDifferences(
-  theCase: Case,
-  all: readonly Answers[],
-  chosenStart: boolean,
-): readonly Answers[] {
+export function withDifferences(reference: string, all: readonly Answers[]): readonly Answers[] {
   return all.map((answers) => {
-    const reference = all.find((one) => one.layout === theCase.reference && one.start === answers.start);
-    const first = askedOf(theCase, answers.start, chosenStart)[0];
-    const here = firstFigure(first, answers);
-    const there = reference && firstFigure(first, reference);
-    if (here === undefined || there === undefined) return answers;
-    return {
-      ...answers,
-      difference: { to: theCase.reference, value: here - there, kind: 'estimate' as const },
-    };
+    const standard = all.find((one) => one.layout === reference && one.start === answers.start);
+    const here = firstFigure(answers);
+    const there = standard && firstFigure(standard);
+    if (typeof here !== 'number' || typeof there !== 'number') return answers;
+    return { ...answers, difference: { to: reference, value: here - there, kind: 'estimate' as const } };
   });
 }
 
-function firstFigure(first: Asked | undefined, answers: Answers): number | undefined {
-  return first ? figureValue(first, answers)?.value : answers.mean.value;
+function firstFigure({ asked, mean }: Answers): number | null | undefined {
+  const [first] = asked;
+  return first ? first.value : mean.value;
 }

@@ -1,7 +1,7 @@
 import type { Mesh } from '../../mesher/index.ts';
 import type { Coefficient, Drift, Medium, Problem } from '../../solver/index.ts';
 
-/** Numbers without a dimension that say what rules a problem; the largest anywhere, absent where nothing of the kind is. */
+/** Numbers that say what rules a problem, most without a dimension; the largest anywhere, absent where nothing of the kind is. */
 export interface PhysicsNumbers {
   /** L: longer side of the box around the compartment, in the length unit. */
   readonly longestExtent: number;
@@ -11,6 +11,8 @@ export interface PhysicsNumbers {
   readonly kappaLOverD?: number;
   /** cL²/D: loss against diffusion. With a tensor its smaller principal value. */
   readonly cL2OverD?: number;
+  /** Largest h²/D along catching wall: earlier times are not resolved by the mesh (METHODS 5). In the time unit. */
+  readonly lowestTime?: number;
 }
 
 /** Entries xx, xy, yy of D at a place; D on the diagonal where it is scalar. */
@@ -27,12 +29,13 @@ export function physicsNumbers(mesh: Mesh, problem: Problem): PhysicsNumbers {
   const { media } = problem;
   const loss = media.some((medium) => medium.loss) ? largestLoss(mesh, media) : undefined;
   const drift = media.some((medium) => medium.drift) ? largestDrift(mesh, media) : undefined;
-  const kappa = largestKappa(mesh, problem);
+  const { kappa, lowestTime } = alongWalls(mesh, problem);
   return {
     longestExtent: extent,
     ...(drift === undefined ? {} : { peclet: extent * drift }),
     ...(kappa === undefined ? {} : { kappaLOverD: extent * kappa }),
     ...(loss === undefined ? {} : { cL2OverD: extent * extent * loss }),
+    ...(lowestTime === undefined ? {} : { lowestTime }),
   };
 }
 
@@ -77,17 +80,18 @@ function largestLoss(mesh: Mesh, media: readonly Medium[]): number {
   return largest;
 }
 
-/** Largest κ ÷ n·Dn in the middle of a partly absorbing segment; undefined without one. */
-function largestKappa(mesh: Mesh, { walls, media }: Problem): number | undefined {
+/** Largest κ ÷ n·Dn of partly absorbing segments and length² ÷ n·Dn of all that catch; undefined without one. */
+function alongWalls(mesh: Mesh, { walls, media }: Problem): { kappa?: number; lowestTime?: number } {
   const { segments, segmentTag, triangles, regionSet } = mesh;
   const nodeCount = mesh.nodes.length / 2;
   const kappaOf = new Map<number, number>();
   for (let s = 0; s < segmentTag.length; s++) {
     const wall = walls.get(segmentTag[s] ?? -1);
-    if (wall?.kind !== 'partlyAbsorbing') continue;
-    kappaOf.set((segments[2 * s] ?? 0) * nodeCount + (segments[2 * s + 1] ?? 0), wall.kappa);
+    if (wall?.kind !== 'partlyAbsorbing' && wall?.kind !== 'absorbing') continue;
+    const kappa = wall.kind === 'absorbing' ? Number.NaN : wall.kappa;
+    kappaOf.set((segments[2 * s] ?? 0) * nodeCount + (segments[2 * s + 1] ?? 0), kappa);
   }
-  let largest: number | undefined;
+  const largest: { kappa?: number; lowestTime?: number } = {};
   for (let side = 0; side < triangles.length && kappaOf.size > 0; side++) {
     const from = triangles[side] ?? 0;
     const to = triangles[side % 3 === 2 ? side - 2 : side + 1] ?? 0;
@@ -98,8 +102,10 @@ function largestKappa(mesh: Mesh, { walls, media }: Problem): number | undefined
     const b = nodeAt(mesh, to);
     const [xx, xy, yy] = entriesAt(medium, (a[0] + b[0]) / 2, (a[1] + b[1]) / 2);
     const [nx, ny] = [b[1] - a[1], a[0] - b[0]];
-    const across = (xx * nx * nx + 2 * xy * nx * ny + yy * ny * ny) / (nx * nx + ny * ny);
-    largest = Math.max(largest ?? 0, kappa / across);
+    const square = nx * nx + ny * ny;
+    const across = (xx * nx * nx + 2 * xy * nx * ny + yy * ny * ny) / square;
+    largest.lowestTime = Math.max(largest.lowestTime ?? 0, square / across);
+    if (!Number.isNaN(kappa)) largest.kappa = Math.max(largest.kappa ?? 0, kappa / across);
   }
   return largest;
 }

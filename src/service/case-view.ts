@@ -28,7 +28,6 @@ function notAvailable(theCase: Case): string[] {
     ...theCase.notAvailable,
     ...theCase.layouts.flatMap((layout) => layout.notAvailable ?? []),
     ...theCase.starts.flatMap((start) => start.notAvailable ?? []),
-    ...theCase.asked.flatMap((asked) => asked.notAvailable ?? []),
   ];
 }
 

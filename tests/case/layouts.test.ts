@@ -162,28 +162,10 @@ describe('starts, figures and reports that are not available yet', () => {
       { readFile: () => 'x mm,y mm\n' },
     );
     expect(read.starts.map((start) => start.notAvailable !== undefined)).toEqual([true, true, false]);
-    expect(read.asked.map((asked) => asked.notAvailable !== undefined)).toEqual([
-      true,
-      true,
-      true,
-      true,
-      true,
-      true,
-      false,
-    ]);
     expect(read.notAvailable).toEqual(
       [
         'starts by a density (start "spread")',
         'starts from a table (start "listed")',
-        'the standard deviation (figure "standard deviation")',
-        'the median time (figure "median")',
-        'shares by a time (figure "share of lid by 1 h")',
-        'the chance of still being inside (figure "still inside at 1 h")',
-        'the time in a region (figure "time in bay")',
-        'the decay time (figure "decay time")',
-        'survival at given times (report.survivalAt)',
-        'the time spent in regions (report.occupationOf)',
-        'higher moments (report.moments)',
         'fields other than mean and shares (report.field "median")',
       ].map((each) => `${each}: not available yet`),
     );

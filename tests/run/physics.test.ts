@@ -90,7 +90,13 @@ describe('the numbers that rule a case', () => {
       unitSquare({ particle: { diffusion: 5, drift: { potential: { expression: '3*x + 4*y' } } } }),
     ).numbers;
     expect(numbers.peclet).toBeCloseTo(5, 9);
-    expect(Object.keys(numbers)).toEqual(['longestExtent', 'peclet', 'roundingFloor', 'negativeRates']);
+    expect(Object.keys(numbers)).toEqual([
+      'longestExtent',
+      'peclet',
+      'lowestTime',
+      'roundingFloor',
+      'negativeRates',
+    ]);
   });
 });
 
