@@ -1,24 +1,32 @@
 import { expect, it } from 'vitest';
-import { answersByStart, nodeLimit, type Pins, type Setting, type Starts, solved } from './setting.ts';
+import type { Answers, Reading as AnswersReading } from '../../src/run/answers.ts';
+import { answersByStart, nodeLimit, type Setting, solved } from './setting.ts';
 
 /** One number that a check asks for and what a source says it is. */
 export interface Reading {
   readonly from: { readonly start: object } | { readonly pin: readonly [number, number] };
-  /** The share of this wall; without it the mean exit time. */
+  /** The share of this wall; without it and the next two the mean exit time. */
   readonly shareOf?: string;
+  /** A figure as a case asks for it, of a start. */
+  readonly figure?: string;
+  /** Something else of a start's or pin's answers. */
+  readonly readOff?: (given: Given) => number | undefined;
   /** What the source states, from the number answered; without it the number itself. */
   readonly derived?: (value: number) => number;
   readonly expected: number;
 }
+
+/** The answers of a start, or what there is of them for a pin. */
+export type Given = AnswersReading & Partial<Answers>;
 
 /** Every check is held to this relative error unless it says a smaller one. */
 export const tolerance = 0.003;
 
 type From = Reading['from'];
 
-export const everywhere: From = { start: { evenIn: 'everywhere' } };
-export const evenIn = (region: string): From => ({ start: { evenIn: region } });
-export const point = (x: number, y: number): From => ({ start: { point: [x, y] } });
+export const everywhere = { start: { evenIn: 'everywhere' } } satisfies From;
+export const evenIn = (region: string) => ({ start: { evenIn: region } }) satisfies From;
+export const point = (x: number, y: number) => ({ start: { point: [x, y] } }) satisfies From;
 export const spot = (x: number, y: number, radius: number): From => ({ start: { spot: [x, y], radius } });
 export const pin = (x: number, y: number): From => ({ pin: [x, y] });
 
@@ -32,6 +40,24 @@ export const share = (shareOf: string, from: From, expected: number): Reading =>
   shareOf,
   expected,
 });
+
+/** A figure asked of a start, such as 'time to 95 %'. */
+export const asked = (
+  figure: string,
+  from: Extract<From, { readonly start: object }>,
+  expected: number,
+  derived?: (value: number) => number,
+): Reading => ({ from, figure, expected, ...(derived && { derived }) });
+
+/** The slowest rate of leaving, by the decay time. */
+export const slowestRate = (expected: number): Reading =>
+  asked('decay time', everywhere, expected, (time) => 1 / time);
+
+export const readOff = (
+  from: From,
+  expected: number,
+  reader: (given: Given) => number | undefined,
+): Reading => ({ from, expected, readOff: reader });
 
 /**
  * A named test: the setting goes the whole way from case file text to answers, and every reading is to be within
@@ -73,27 +99,26 @@ export function read(
 ): { readonly nodes: number; readonly values: ReadonlyMap<string, number> } {
   const starts: Record<string, object> = {};
   const pins: Record<string, readonly [number, number]> = {};
-  for (const [label, { from }] of Object.entries(readings)) {
+  const figures: Record<string, string> = {};
+  for (const [label, { from, figure }] of Object.entries(readings)) {
     if ('pin' in from) pins[label] = from.pin;
     else starts[label] = from.start;
+    if (figure !== undefined) figures[label] = figure;
   }
-  return valuesOf(setting, readings, starts, pins);
-}
-
-function valuesOf(
-  setting: Setting,
-  readings: Readonly<Record<string, Reading>>,
-  starts: Starts,
-  pins: Pins,
-): { readonly nodes: number; readonly values: ReadonlyMap<string, number> } {
-  const answer = solved(setting, starts, pins);
+  const answer = solved(setting, starts, pins, figures);
   const byStart = answersByStart(answer);
   const anyStart = answer.answers[0];
   const values = new Map<string, number>();
-  for (const [label, { from, shareOf }] of Object.entries(readings)) {
-    const given = 'pin' in from ? anyStart?.pins[label] : byStart.get(label);
-    const value = shareOf === undefined ? given?.mean.value : given?.shares[shareOf]?.value;
-    if (value !== undefined) values.set(label, value);
+  for (const [label, reading] of Object.entries(readings)) {
+    const given = 'pin' in reading.from ? anyStart?.pins[label] : byStart.get(label);
+    const value = given && numberOf(given, reading);
+    if (typeof value === 'number') values.set(label, value);
   }
   return { nodes: anyStart?.mesh.nodes ?? Number.NaN, values };
+}
+
+function numberOf(given: Given, { shareOf, figure, readOff: reader }: Reading): number | null | undefined {
+  if (reader) return reader(given);
+  if (figure !== undefined) return given.asked?.[0]?.value;
+  return shareOf === undefined ? given.mean.value : given.shares[shareOf]?.value;
 }

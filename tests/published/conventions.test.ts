@@ -1,5 +1,5 @@
 import { describe } from 'vitest';
-import { check, everywhere, mean, pin, point, type Reading, share } from './check.ts';
+import { check, everywhere, mean, pin, point, type Reading, share, slowestRate } from './check.ts';
 import { listed } from './listed.ts';
 import type { Setting } from './setting.ts';
 
@@ -129,6 +129,7 @@ for (const { noise, label, short } of conventions) {
         'u(0)': mean(point(0, 0), listed('disk-2media', `u(0) ${label}`)),
         ...(noise === 'isothermal' && {
           average: mean(everywhere, listed('disk-2media', 'avg isothermal')),
+          'slowest rate': slowestRate(listed('disk-2media', 'rate isothermal')),
         }),
       },
     );

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { check, everywhere, mean, pin, point, read, tolerance } from './check.ts';
+import { check, everywhere, mean, pin, point, read, slowestRate, tolerance } from './check.ts';
 import { listed } from './listed.ts';
 import { sectorExitTime, wedgeExitTime } from './sector-exit-time.ts';
 import type { Setting } from './setting.ts';
@@ -42,6 +42,7 @@ describe('triangles', () => {
     {
       'u(centroid) = 1/36': mean(point(0.5, Math.sqrt(3) / 6), 1 / 36),
       average: mean(everywhere, 1 / 80),
+      'slowest rate 16π²/3 [Lamé 1852; Pinsky 1980]': slowestRate((16 * Math.PI ** 2) / 3),
       'f Re = 40/3': mean(everywhere, 40 / 3, friction(Math.sqrt(3) / 4, 3)),
       'torsion J = √3/80': mean(everywhere, Math.sqrt(3) / 80, (u) => Math.sqrt(3) * u),
     },
@@ -52,6 +53,7 @@ describe('triangles', () => {
     polygon([0, 0], [1, 0], [0, 1]),
     {
       average: mean(everywhere, listed('tri-right-A', 'avg')),
+      'slowest rate 5π²': slowestRate(5 * Math.PI ** 2),
       'torsion J = 2·average': mean(everywhere, listed('tri-right-A', 'torsion J'), (u) => 2 * u),
       'f Re': mean(everywhere, listed('tri-right-A', 'f Re (Fanning)'), friction(0.5, 2 + Math.SQRT2)),
     },
@@ -80,6 +82,7 @@ describe('sectors', () => {
     {
       'u on the axis at 1/2': mean(point(0.5, 0), sectorExitTime(Math.PI / 3, 1, 0.5)),
       average: mean(everywhere, listed('sector-A-60deg', 'avg')),
+      'slowest rate': slowestRate(listed('sector-A-60deg', 'rate')),
       'f Re': mean(
         everywhere,
         listed('sector-A-60deg', 'f Re (Fanning)'),
@@ -95,6 +98,7 @@ describe('sectors', () => {
     {
       'u on the axis at 1/2': mean(point(0.5, 0), sectorExitTime(Math.PI, 1, 0.5)),
       average: mean(everywhere, (Math.PI / 2 - 4 / Math.PI) / (2 * Math.PI)),
+      'slowest rate': slowestRate(listed('sector-A-semicircle', 'rate')),
       'f Re': mean(
         everywhere,
         listed('sector-A-semicircle', 'f Re (Fanning)'),
@@ -123,6 +127,9 @@ describe('polygons with corners inwards and outwards', () => {
     polygon(...lShape),
     {
       average: mean(everywhere, listed('L-A', 'avg')),
+      'slowest rate [L-eig: Fox, Henrici & Moler 1967; Betcke & Trefethen 2005]': slowestRate(
+        listed('L-eig', 'rate 1'),
+      ),
       'u(−0.5, 0.5)': mean(point(-0.5, 0.5), listed('L-A', 'u(-0.5,0.5)')),
       'u(0.5, 0.5)': mean(pin(0.5, 0.5), listed('L-A', 'u(0.5,0.5)')),
       'torsion J = 4 ∫u': mean(everywhere, listed('L-A', 'torsion J'), (u) => 12 * u),

@@ -5,19 +5,6 @@ import { listedChecks } from './listed.ts';
 
 /** Checks that no test of this folder makes, each with what stands in the way or where it is made instead. */
 const elsewhere: Readonly<Record<string, string>> = {
-  'strip-AA-surv': 'survival',
-  'strip-RRob-rate': 'decay time',
-  'disk-A-moments': 'moments',
-  'disk-A-surv': 'survival',
-  'disk-eigs': 'decay time',
-  'disk-A-occ': 'occupation',
-  'annulus-eigs': 'decay time',
-  'square-A-surv': 'survival',
-  'square-A-surv-uniform': 'survival',
-  'rect-eigs': 'decay time',
-  'L-eig': 'decay time',
-  'rel-survival': 'survival',
-  'rel-cond': 'mean time given an exit',
   'rel-scale-length': 'tests/laws',
   'rel-scale-D': 'tests/laws',
   'rel-rotate': 'tests/laws',

@@ -1,5 +1,6 @@
 import { describe } from 'vitest';
-import { check, evenIn, everywhere, mean, pin, point, share, spot } from './check.ts';
+import { asked, check, evenIn, everywhere, mean, pin, point, share, slowestRate, spot } from './check.ts';
+import { listed } from './listed.ts';
 import type { Setting } from './setting.ts';
 
 const rim = { on: 'outline' };
@@ -37,7 +38,12 @@ describe('discs and ellipses', () => {
       drawing: { outline: { circle: [0, 0], radius: 50 } },
       particle: { diffusion: '400 um^2/s' },
     },
-    { 'u(0)': mean(point(0, 0), 1.5625), average: mean(everywhere, 0.78125) },
+    {
+      'u(0)': mean(point(0, 0), 1.5625),
+      average: mean(everywhere, 0.78125),
+      median: asked('median', point(0, 0), listed('disk-scale', 'median [s]')),
+      'slowest rate': slowestRate(listed('disk-scale', 'rate [1/s]')),
+    },
   );
 
   check(

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { check, everywhere, mean, pin, point, read, share, tolerance } from './check.ts';
+import { check, everywhere, mean, pin, point, read, share, slowestRate, tolerance } from './check.ts';
 import { listed } from './listed.ts';
 import type { Setting } from './setting.ts';
 
@@ -43,6 +43,7 @@ describe('partly absorbing walls', () => {
     'u(0)': mean(point(0, 0), 1 / 2),
     'u on the rim': mean(point(Math.cos(1), Math.sin(1)), 1 / 4),
     average: mean(everywhere, 3 / 8),
+    'slowest rate': slowestRate(listed('disk-Rob2', 'rate')),
   });
   check(
     'square-Rob2',
@@ -57,6 +58,7 @@ describe('partly absorbing walls', () => {
       'u(corner)': mean(point(0, 0), listed('square-Rob2', 'u(corner)')),
       'u(mid side)': mean(pin(0.5, 0), listed('square-Rob2', 'u(mid side)')),
       average: mean(everywhere, listed('square-Rob2', 'avg')),
+      'slowest rate': slowestRate(listed('square-Rob2', 'rate')),
     },
   );
   check(

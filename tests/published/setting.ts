@@ -10,17 +10,26 @@ export interface Setting {
   readonly kinds: Readonly<Record<string, unknown>>;
   readonly particle?: object;
   readonly units?: object;
+  readonly report?: object;
 }
 
 /** Starts by name as a case file gives them. */
 export type Starts = Readonly<Record<string, object>>;
 export type Pins = Readonly<Record<string, readonly [x: number, y: number]>>;
 
+/** Figures asked of starts, by the start's name. */
+export type Figures = Readonly<Record<string, string>>;
+
 /** The largest mesh a check may take. */
 export const nodeLimit = 50_000;
 
 /** The text of the case file of a setting, with one layout called `only`. */
-export function caseText(setting: Setting, starts: Starts = {}, pins: Pins = {}): string {
+export function caseText(
+  setting: Setting,
+  starts: Starts = {},
+  pins: Pins = {},
+  figures: Figures = {},
+): string {
   return JSON.stringify({
     tarry: 1,
     title: 'Check against a published value',
@@ -31,13 +40,22 @@ export function caseText(setting: Setting, starts: Starts = {}, pins: Pins = {})
     layouts: { only: setting.kinds },
     ...(Object.keys(starts).length > 0 && { starts }),
     ...(Object.keys(pins).length > 0 && { pins }),
+    ...(Object.keys(figures).length > 0 && {
+      asked: Object.entries(figures).map(([start, figure]) => ({ figure, start })),
+    }),
+    ...(setting.report && { report: setting.report }),
     accuracy: { nodes: nodeLimit },
   });
 }
 
 /** The whole way of an answer: case file text → Case → domain, mesh, fields → answers. */
-export function solved(setting: Setting, starts: Starts = {}, pins: Pins = {}): LayoutAnswer {
-  const theCase = readCase(caseText(setting, starts, pins), {
+export function solved(
+  setting: Setting,
+  starts: Starts = {},
+  pins: Pins = {},
+  figures: Figures = {},
+): LayoutAnswer {
+  const theCase = readCase(caseText(setting, starts, pins, figures), {
     readFile: (name: string): string => {
       throw new Error(`no check has files, yet ${name} was asked for`);
     },

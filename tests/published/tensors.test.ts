@@ -1,5 +1,5 @@
 import { describe } from 'vitest';
-import { check, everywhere, mean, pin, point } from './check.ts';
+import { check, everywhere, mean, pin, point, slowestRate } from './check.ts';
 import { listed } from './listed.ts';
 import { rectangleAverage, rectangleExitTime } from './rectangle-exit-time.ts';
 
@@ -55,6 +55,7 @@ describe('diffusion that depends on direction', () => {
       'u(centre)': mean(point(0.5, 0.5), rectangleExitTime(0.5, 1, 0.25, 0.5)),
       'u(centre), as listed': mean(pin(0.5, 0.5), listed('rect-aniso', 'u(centre)')),
       average: mean(everywhere, rectangleAverage(0.5, 1)),
+      'slowest rate 5π²': slowestRate(5 * Math.PI ** 2),
       'average, as listed': mean(everywhere, listed('rect-aniso', 'avg')),
     },
     within,
