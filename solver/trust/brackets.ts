@@ -50,8 +50,20 @@ export interface Brackets {
   readonly decayTime: () => Bracketed;
   /** What each triangle adds to the width of the mean's bracket: where the mesh should be finer. */
   readonly widthShares: (start: BracketStart) => Float64Array;
+  /** The solutions behind the figures. */
+  readonly solutions: BracketSolutions;
   /** Whether a start is taken as it is, as the disc that stands for a point exactly, or as a spot in its place. */
   readonly takenAs: (start: BracketStart) => 'itself' | 'disc' | 'spot';
+}
+
+/** Galerkin solutions with right-hand side m̂, ρ, m̂u_h and m̂z_h. */
+export interface BracketSolutions {
+  readonly mean: () => GalerkinSolution;
+  readonly dual: (start: BracketStart) => GalerkinSolution;
+  readonly byMean: () => GalerkinSolution;
+  readonly byDual: (start: BracketStart) => GalerkinSolution;
+  /** c where ρ = c m̂; undefined where they are not proportional, or not seen to be. */
+  readonly timesMean: (start: BracketStart) => number | undefined;
 }
 
 /** Radius of the spot that takes the place of a point no disc stands for, relative to the size of the mesh. */
@@ -133,6 +145,11 @@ export function prepareBrackets(system: System, problem: Problem, hooks: Hooks =
     standardDeviation: (start) => deviation(mean(start), secondMoment(start)),
     decayTime: () => between(1 / rate().high, 1 / rate().low),
     widthShares: (start) => widthShares(base, meanSolution(), dual(start).solution),
+    solutions: {
+      ...{ mean: meanSolution, byMean, byDual },
+      dual: (start) => dual(start).solution,
+      timesMean: (start) => timesMean(base, start),
+    },
     takenAs: (start) => dual(start).takenAs,
   };
 }
@@ -189,7 +206,7 @@ function areaOf({ geometry }: ConsistentSystem): number {
 /** The dual of an even start everywhere is this times the mean exit time where m̂ is the same everywhere. */
 function timesMean(base: ConsistentSystem, start: BracketStart): number | undefined {
   const { coefficients } = base;
-  if (start.kind !== 'even' || start.inside || coefficients.step === 1) return undefined;
+  if (start.kind !== 'even' || start.inside) return undefined;
   const { mass } = coefficients;
   if (mass.some((m) => m !== mass[0])) return undefined;
   return 1 / (mass[0] * areaOf(base));

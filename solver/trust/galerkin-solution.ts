@@ -327,3 +327,30 @@ export function scaledSolution(solution: GalerkinSolution, a: number): GalerkinS
     parts: times(solution.parts),
   };
 }
+
+/** The solution for a times one right-hand side plus b times another. */
+export function combinedSolution(
+  base: ConsistentSystem,
+  a: number,
+  one: GalerkinSolution,
+  b: number,
+  two: GalerkinSolution,
+): GalerkinSolution {
+  if (a === 0) return scaledSolution(two, b);
+  const sum = (p: Float64Array, q: Float64Array): Float64Array => p.map((value, i) => a * value + b * q[i]);
+  const atMost = (p: Float64Array | undefined, q: Float64Array | undefined): Float64Array | undefined => {
+    if (!p) return q?.map((value) => Math.abs(b) * value);
+    return p.map((value, i) => Math.abs(a) * value + Math.abs(b) * (q ? q[i] : 0));
+  };
+  const parts = sum(one.parts, two.parts);
+  const norm = new Float64Array(one.norm.length);
+  elementProducts(base, parts, parts, norm);
+  for (let t = 0; t < norm.length; t++) norm[t] = Math.sqrt(norm[t]);
+  const oscillation = atMost(one.source.oscillation, two.source.oscillation);
+  return {
+    source: { load: sum(one.source.load, two.source.load), ...(oscillation ? { oscillation } : {}) },
+    ...{ field: sum(one.field, two.field), residual: sum(one.residual, two.residual), parts, norm },
+    wallGap: sum(one.wallGap, two.wallGap),
+    oscillation: atMost(one.oscillation, two.oscillation),
+  };
+}
