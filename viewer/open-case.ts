@@ -3,12 +3,13 @@ import { api, followJob, type Refusal } from './api.ts';
 import type { Frame, TitleBlock } from './page/frame.ts';
 import { writePlace } from './page/place.ts';
 import { readField } from './plan/field.ts';
+import { askedText, keyFigure } from './readings/readings.ts';
 import { BenchSheet, type Solved } from './sheets/bench-sheet.ts';
 import { sentenceOf } from './sheets/refused-sheet.ts';
 import { readAnswers } from './words/answers.ts';
 import { timeUnitFor } from './words/display-unit.ts';
 import { Letters } from './words/letters.ts';
-import { numberText, withUnit } from './words/number-text.ts';
+import { figureWords } from './words/verdict.ts';
 
 /** What an open case needs of the page around it. */
 export interface Host {
@@ -175,12 +176,12 @@ export class OpenCase {
     const all = this.case.layouts.length;
     const words = all === 1 ? 'Solved.' : `${this.#solved.size} of ${all} layouts solved.`;
     this.#fill(`${words} Nothing running.`);
-    const mean = solved.answers.find((one) => one.start === this.#start)?.mean;
-    if (mean === undefined) return;
+    const shown = solved.answers.find((one) => one.start === this.#start);
+    if (shown === undefined) return;
     const time = timeUnitFor(solved.layout.longest.value, this.case.units.time);
-    const value = withUnit(numberText(mean.value * time.factor), time.name);
-    const trust = mean.proven ? '' : ', estimated, not proven';
-    this.#host.frame.say(`${this.#layout}: mean time until caught ${value}${trust}.`);
+    const key = keyFigure(shown);
+    const trust = key.bracket?.proven === true ? '' : ', estimated, not proven';
+    this.#host.frame.say(`${this.#layout}: ${figureWords(key.figure)} ${askedText(key, time)}${trust}.`);
   }
 
   #stopped(): void {

@@ -1,7 +1,7 @@
 import { expect, it } from 'vitest';
 import { placeText, readPlace } from '../../viewer/page/place.ts';
 import { catchingStretches } from '../../viewer/plan/stretches.ts';
-import { keyFigure, startWords } from '../../viewer/readings/readings.ts';
+import { askedText, figureRows, keyFigure, startWords } from '../../viewer/readings/readings.ts';
 import { stretchWords } from '../../viewer/sheets/bench-words.ts';
 import { nearGroups } from '../../viewer/sheets/case-preview.ts';
 import { proposedForm, rolesFor, setRole, unitOf, uploadOf } from '../../viewer/sheets/drawn-case.ts';
@@ -16,7 +16,6 @@ const proven = (value: number, low: number, high: number) => ({ value, low, high
 const asked = (value: number, limits: object) => ({
   figure: 'time to 95 %',
   value,
-  notAvailable: false,
   ...limits,
 });
 
@@ -44,7 +43,7 @@ it('a bracket on both sides of the limit leaves the question open', () => {
 });
 
 it('a share is measured in percentage points, from its near end', () => {
-  const share = { figure: 'share of left pad', value: 0.61, atLeast: 0.4, notAvailable: false };
+  const share = { figure: 'share of left pad', value: 0.61, atLeast: 0.4 };
   expect(verdictWords(share, undefined, MINUTES)?.verdict).toBe('Meets it by 21 percentage points.');
   expect(verdictWords(share, proven(0.61, 0.6, 0.62), MINUTES)?.verdict).toBe(
     'Meets it by 20 percentage points or more.',
@@ -56,9 +55,7 @@ it('a share is measured in percentage points, from its near end', () => {
 
 it('nothing is said of a figure without a limit or without a value', () => {
   expect(verdictWords(asked(100, {}), undefined, MINUTES)).toBeUndefined();
-  expect(
-    verdictWords({ figure: 'median', notAvailable: true, under: 5 }, undefined, MINUTES),
-  ).toBeUndefined();
+  expect(verdictWords({ figure: 'median', under: 5 }, undefined, MINUTES)).toBeUndefined();
 });
 
 it('surely is said of proven brackets only', () => {
@@ -77,6 +74,11 @@ it('figures are named in the words of the page', () => {
   expect(figureWords('time to 95 %')).toBe('95 % caught within');
   expect(figureWords('share of left pad')).toBe('caught at left pad');
   expect(figureWords('share of left pad by 20 min')).toBe('caught at left pad by 20 min');
+  expect(figureWords('median')).toBe('half caught within');
+  expect(figureWords('time for 50 % to leave by left pad')).toBe('50 % caught at left pad within');
+  expect(figureWords('still inside at 20 min')).toBe('still free at 20 min');
+  expect(figureWords('time in inlet bay')).toBe('mean time spent in inlet bay');
+  expect(figureWords('decay time')).toBe('decay time');
 });
 
 it('an answer is read with what it has; one without a mean is not an answer', () => {
@@ -85,7 +87,7 @@ it('an answer is read with what it has; one without a mean is not an answer', ()
     mean: { value: 5, kind: 'guaranteed', low: 4, high: 6 },
     shares: { a: { value: 1, kind: 'estimate' } },
     asked: [
-      { figure: 'median', notAvailable: true },
+      { figure: 'median', under: 3 },
       { figure: 'mean', value: 5, under: 9, verdict: 'meets' },
     ],
     warnings: ['one', { what: 'two' }],
@@ -95,6 +97,48 @@ it('an answer is read with what it has; one without a mean is not an answer', ()
   expect(answer.warnings).toEqual(['one', 'two']);
   expect(keyFigure(answer).figure).toBe('mean');
   expect(() => readAnswers({ start: 'bay' })).toThrow(TypeError);
+});
+
+const estimate = (value: number) => ({ value, kind: 'estimate' });
+const timed = readAnswers({
+  start: 'bay',
+  mean: estimate(1716),
+  sd: estimate(1542),
+  times: { '50 %': estimate(1296), '95 %': { value: 4758, low: 4602, high: 4932, kind: 'guaranteed' } },
+  decayTime: estimate(1008 / Math.LN2),
+  pins: { one: { mean: estimate(60), sd: estimate(120), times: { '95 %': estimate(240) } } },
+  asked: [
+    { figure: 'time to 95 %', value: 4758, low: 4602, high: 4932, kind: 'guaranteed', under: 4800 },
+    { figure: 'mean', ...estimate(1716), under: 3600, verdict: 'meets' },
+    { figure: 'time for 30 % to leave by left', value: null, never: { atMost: 0.25 }, under: 60 },
+  ],
+});
+
+it('the key figure is the first asked, with its own bracket; mean, spread, half and what comes later stand beneath', () => {
+  const key = keyFigure(timed);
+  expect(key).toMatchObject({ figure: 'time to 95 %', value: 4758, bracket: { proven: true } });
+  expect(verdictWords(key, key.bracket, MINUTES)?.verdict).toBe('Open: narrow the bracket.');
+  expect(figureRows(timed, key, MINUTES)).toEqual([
+    ['Mean time until caught', '28.6\u00a0min'],
+    ['Standard deviation', '25.7\u00a0min'],
+    ['Half caught within', '21.6\u00a0min'],
+    ['Later on, halves every', '16.8\u00a0min'],
+    ['\u2003must be under 60\u00a0min', 'Meets it by 31\u00a0min'],
+    ['30 % caught at left within', 'never: at most 25.0\u00a0%'],
+    ['\u2003must be under 1\u00a0min', 'Misses it: never reached'],
+  ]);
+  expect(timed.pins[0]).toMatchObject({
+    mean: { value: 60 },
+    deviation: { value: 120 },
+    most: { value: 240 },
+  });
+});
+
+it('a time that is never reached is the key figure where it is asked first', () => {
+  const never = { figure: 'time to 95 %', never: 0.6, atLeast: 60 };
+  expect(keyFigure({ ...timed, asked: [never] })).toBe(never);
+  expect(askedText(never, MINUTES)).toBe('never: at most 60.0\u00a0%');
+  expect(verdictWords(never, undefined, MINUTES)?.verdict).toBe('Meets it: never reached.');
 });
 
 it('guaranteed without both ends of a bracket is not proven', () => {

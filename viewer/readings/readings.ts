@@ -1,10 +1,17 @@
 import type { CaseView } from '../../src/service/contract.ts';
 import { choice } from '../page/choice.ts';
 import { button, el } from '../page/dom.ts';
-import type { Answers, Asked, Figure } from '../words/answers.ts';
+import type { Answers, Asked, Reading } from '../words/answers.ts';
 import type { DisplayUnit } from '../words/display-unit.ts';
 import { decimalsFor, fixedText, numberText, withUnit } from '../words/number-text.ts';
-import { bracketWords, differenceWords, figureWords, valueText, verdictWords } from '../words/verdict.ts';
+import {
+  bracketWords,
+  differenceWords,
+  figureWords,
+  neverText,
+  valueText,
+  verdictWords,
+} from '../words/verdict.ts';
 import { answerAxis } from './answer-axis.ts';
 import { shareBar } from './share-bar.ts';
 
@@ -35,17 +42,16 @@ export function readings(data: ReadingsData): HTMLElement {
   );
 }
 
-/** The answer that carries the verdict: the first asked one for this start that has a value, else the mean. */
-export function keyFigure(answers: Answers): Asked & { readonly value: number } {
-  const first = answers.asked.find((asked) => asked.value !== undefined);
-  if (first?.value !== undefined) return { ...first, value: first.value };
-  return { figure: 'mean', value: answers.mean.value, notAvailable: false };
+/** The answer that carries the verdict: the first asked one for this start that was answered, else the mean. */
+export function keyFigure(answers: Answers): Asked {
+  const first = answers.asked.find((asked) => asked.value !== undefined || asked.never !== undefined);
+  return first ?? { figure: 'mean', value: answers.mean.value, bracket: answers.mean };
 }
 
-function bracketOf(answers: Answers, asked: Asked): Figure | undefined {
-  if (asked.figure === 'mean') return answers.mean;
-  const wall = /^share of (.+)$/.exec(asked.figure)?.[1];
-  return answers.shares.find((share) => share.name === wall)?.share;
+/** A figure's value with its unit, or that it is never reached. */
+export function askedText({ figure, value, never }: Asked, time: DisplayUnit): string {
+  if (never !== undefined) return neverText(never);
+  return value === undefined ? '—' : valueText(figure, value, time);
 }
 
 /** 'released evenly in the inlet bay' as a heading: 'Released …'. */
@@ -57,10 +63,10 @@ export function startWords(theCase: CaseView, start: string): string {
 function answerSection(data: ReadingsData): HTMLElement {
   const { shown, time } = data;
   const key = keyFigure(shown);
-  const bracket = bracketOf(shown, key);
+  const { bracket, value } = key;
   const verdict = verdictWords(key, bracket, time);
   const parts: HTMLElement[] = [releasedHeading(data)];
-  const [number = '', unit = ''] = valueText(key.figure, key.value, time).split('\u00a0');
+  const [number = '', unit = ''] = askedText(key, time).split('\u00a0');
   parts.push(
     el(
       'p',
@@ -74,32 +80,44 @@ function answerSection(data: ReadingsData): HTMLElement {
       el(
         'p',
         { class: 'beneath' },
-        shown.mean.proven ? '' : 'Estimated, not proven: there is no bracket yet.',
+        bracket?.proven === true ? '' : 'Estimated, not proven: there is no bracket yet.',
       ),
     );
   } else {
     parts.push(
-      answerAxis(key, bracket, time, data.width),
+      ...(value === undefined ? [] : [answerAxis({ ...key, value }, bracket, time, data.width)]),
       el('p', { class: 'limit-words' }, `It ${verdict.limit}.`),
       el('p', { class: 'verdict' }, verdict.verdict),
       el('p', { class: 'beneath' }, verdict.beneath ?? ''),
     );
   }
-  const rows: [string, string][] = [];
-  if (key.figure !== 'mean') {
-    rows.push(['Mean time until caught', valueText('mean', shown.mean.value, time)]);
-  }
-  for (const asked of shown.asked) {
-    if (asked.value === undefined || asked.figure === key.figure) continue;
-    const words = verdictWords(asked, bracketOf(shown, asked), time);
-    rows.push([capital(figureWords(asked.figure)), valueText(asked.figure, asked.value, time)]);
-    if (words !== undefined) rows.push([`\u2003${words.limit}`, words.verdict.replace(/\.$/, '')]);
-  }
+  const rows = figureRows(shown, key, time);
   if (rows.length > 0) parts.push(pairs(rows));
   if (shown.difference !== undefined && shown.difference.to !== data.layout) {
     parts.push(el('p', { class: 'difference' }, `${capital(differenceWords(shown.difference, time))}.`));
   }
   return el('section', { class: 'answer' }, ...parts);
+}
+
+/** Mean, spread, half and what comes later, then what else was asked. */
+export function figureRows(shown: Answers, key: Asked, time: DisplayUnit): [string, string][] {
+  const rows: [string, string][] = [];
+  const add = (figure: string, name: string, value: number | undefined) => {
+    if (value !== undefined && figure !== key.figure) rows.push([name, valueText(figure, value, time)]);
+  };
+  add('mean', 'Mean time until caught', shown.mean.value);
+  add('standard deviation', 'Standard deviation', shown.deviation?.value);
+  add('median', 'Half caught within', shown.half?.value);
+  const decay = shown.decayTime?.value;
+  add('halves', 'Later on, halves every', decay === undefined ? undefined : Math.LN2 * decay);
+  for (const asked of shown.asked) {
+    if (asked === key || (asked.value === undefined && asked.never === undefined)) continue;
+    const words = verdictWords(asked, asked.bracket, time);
+    const given = ['mean', 'standard deviation', 'median'].includes(asked.figure);
+    if (!given) rows.push([capital(figureWords(asked.figure)), askedText(asked, time)]);
+    if (words !== undefined) rows.push([`\u2003${words.limit}`, words.verdict.replace(/\.$/, '')]);
+  }
+  return rows;
 }
 
 function releasedHeading(data: ReadingsData): HTMLElement {
@@ -178,19 +196,26 @@ function caughtWhere(data: ReadingsData): HTMLElement {
 
 function pinTable(data: ReadingsData): HTMLElement {
   const { shown, time } = data;
-  const decimals = decimalsFor(Math.max(...shown.pins.map((pin) => pin.mean.value * time.factor)));
+  const columns = [
+    { name: 'mean', of: (pin: Reading) => pin.mean },
+    { name: 'standard deviation', of: (pin: Reading) => pin.deviation },
+    { name: '95\u00a0%', of: (pin: Reading) => pin.most },
+  ].filter(({ of }) => shown.pins.every((pin) => of(pin) !== undefined));
+  const values = shown.pins.map((pin) => columns.map(({ of }) => (of(pin)?.value ?? 0) * time.factor));
+  const decimals = decimalsFor(Math.max(...values.flat()));
   const rows = shown.pins.map((pin, i) =>
     el(
       'tr',
       {},
       el('td', { class: 'pin-cell' }, el('span', { class: 'pin-ring' }, String(i + 1))),
       el('th', { scope: 'row' }, pin.name),
-      el('td', { class: 'figure' }, fixedText(pin.mean.value * time.factor, decimals)),
+      ...(values[i] ?? []).map((value) => el('td', { class: 'figure' }, fixedText(value, decimals))),
     ),
   );
+  const names = columns.map(({ name }) => name).join(', ');
   return section(
     'Pins',
-    withUnit('mean,', time.name),
+    time.name === '' ? names : `${names}; ${time.name}`,
     el('table', { class: 'pin-table' }, el('tbody', {}, ...rows)),
   );
 }

@@ -12,18 +12,35 @@ export interface Figure {
 
 export interface Asked {
   readonly figure: string;
+  /** Absent for a time that is never reached, and for what could not be answered. */
   readonly value?: number;
+  /** For a time that is never reached: the part that ever gets there. */
+  readonly never?: number;
+  /** The value with its bracket. */
+  readonly bracket?: Figure;
+  /** Counts what is caught, not what is lost. */
+  readonly caughtOnly?: true;
   readonly under?: number;
   readonly atLeast?: number;
   readonly verdict?: 'meets' | 'misses' | 'open';
-  readonly notAvailable: boolean;
 }
 
-export interface Answers {
-  readonly start: string;
+/** What is answered at a place as for a start; times in the case's time unit. */
+export interface Reading {
   readonly mean: Figure;
+  readonly deviation?: Figure;
+  /** Time by which half have gone. */
+  readonly half?: Figure;
+  /** Time by which 95 % have gone. */
+  readonly most?: Figure;
+}
+
+export interface Answers extends Reading {
+  readonly start: string;
+  /** Inverse of the slowest rate. */
+  readonly decayTime?: Figure;
   readonly shares: readonly { readonly name: string; readonly share: Figure }[];
-  readonly pins: readonly { readonly name: string; readonly mean: Figure }[];
+  readonly pins: readonly ({ readonly name: string } & Reading)[];
   readonly asked: readonly Asked[];
   readonly difference?: { readonly to: string; readonly value: number; readonly proven: boolean };
   readonly mesh?: { readonly nodes: number; readonly triangles: number; readonly minAngle: number };
@@ -65,18 +82,34 @@ function asked(value: unknown): Asked[] {
   const raw = object(value);
   const name = textOf(raw['figure']);
   if (name === undefined) return [];
-  const [amount, under, atLeast] = [numberOf(raw['value']), numberOf(raw['under']), numberOf(raw['atLeast'])];
+  const [under, atLeast] = [numberOf(raw['under']), numberOf(raw['atLeast'])];
   const verdict = (['meets', 'misses', 'open'] as const).find((word) => word === raw['verdict']);
+  const bracket = figure(raw);
+  const never = numberOf(object(raw['never'])['atMost']);
   return [
     {
       figure: name,
-      notAvailable: raw['notAvailable'] === true,
-      ...(amount === undefined ? {} : { value: amount }),
+      ...(bracket === undefined ? {} : { value: bracket.value, bracket }),
+      ...(never === undefined ? {} : { never }),
+      ...(raw['counts'] === 'caught' ? { caughtOnly: true as const } : {}),
       ...(under === undefined ? {} : { under }),
       ...(atLeast === undefined ? {} : { atLeast }),
       ...(verdict === undefined ? {} : { verdict }),
     },
   ];
+}
+
+function reading(raw: Raw): Reading | undefined {
+  const mean = figure(raw['mean']);
+  if (mean === undefined) return undefined;
+  const times = object(raw['times']);
+  const [deviation, half, most] = [raw['sd'], times['50 %'], times['95 %']].map(figure);
+  return {
+    mean,
+    ...(deviation === undefined ? {} : { deviation }),
+    ...(half === undefined ? {} : { half }),
+    ...(most === undefined ? {} : { most }),
+  };
 }
 
 function named(value: unknown): { name: string; share: Figure }[] {
@@ -94,21 +127,23 @@ function named(value: unknown): { name: string; share: Figure }[] {
 export function readAnswers(value: unknown): Answers {
   const raw = object(value);
   const start = textOf(raw['start']);
-  const mean = figure(raw['mean']);
-  if (start === undefined || mean === undefined) throw new TypeError('an answer without a start or a mean');
+  const here = reading(raw);
+  if (start === undefined || here === undefined) throw new TypeError('an answer without a start or a mean');
   const difference = object(raw['difference']);
   const [to, amount] = [textOf(difference['to']), numberOf(difference['value'])];
   const mesh = object(raw['mesh']);
   const [nodes, triangles, minAngle] = ['nodes', 'triangles', 'minAngle'].map((key) => numberOf(mesh[key]));
   const roundingFloor = numberOf(object(raw['numbers'])['roundingFloor']);
   const version = textOf(object(raw['made'])['version']);
+  const decayTime = figure(raw['decayTime']);
   return {
     start,
-    mean,
+    ...here,
+    ...(decayTime === undefined ? {} : { decayTime }),
     shares: named(raw['shares']),
     pins: Object.entries(object(raw['pins'])).flatMap(([name, one]) => {
-      const reading = figure(object(one)['mean']);
-      return reading === undefined ? [] : [{ name, mean: reading }];
+      const there = reading(object(one));
+      return there === undefined ? [] : [{ name, ...there }];
     }),
     asked: list(raw['asked']).flatMap(asked),
     ...(to === undefined || amount === undefined

@@ -12,10 +12,19 @@ export function isShare(figure: string): boolean {
 /** The figure in the words of the page. */
 export function figureWords(figure: string): string {
   if (figure === 'mean') return 'mean time until caught';
+  if (figure === 'median') return 'half caught within';
   const share = /^share of (.+?)( by .+)?$/.exec(figure);
   if (share !== null) return `caught at ${share[1]}${share[2] ?? ''}`;
   const percent = /^time to (.+)$/.exec(figure);
-  return percent === null ? figure : `${percent[1]} caught within`;
+  if (percent !== null) return `${percent[1]} caught within`;
+  const leave = /^time for (.+?) to leave by (.+)$/.exec(figure);
+  if (leave !== null) return `${leave[1]} caught at ${leave[2]} within`;
+  return figure.replace(/^still inside/, 'still free').replace(/^time in/, 'mean time spent in');
+}
+
+/** 'never: at most 25 %' in place of a time that is never reached. */
+export function neverText(atMost: number): string {
+  return `never: at most ${withUnit(numberText(100 * atMost), '%')}`;
 }
 
 /** A value of a figure with its unit. */
@@ -58,9 +67,9 @@ export function verdictWords(
   time: DisplayUnit,
 ): VerdictWords | undefined {
   const limit = asked.under ?? asked.atLeast;
-  if (limit === undefined || asked.value === undefined) return undefined;
+  const value = asked.value ?? (asked.never === undefined ? undefined : Number.POSITIVE_INFINITY);
+  if (limit === undefined || value === undefined) return undefined;
   const under = asked.under !== undefined;
-  const value = asked.value;
   const low = bracket?.low ?? value;
   const high = bracket?.high ?? value;
   const proven = bracket?.proven === true;
@@ -73,6 +82,13 @@ export function verdictWords(
     return { limit: limitWords, verdict: 'Open: narrow the bracket.', ...beneath };
   }
   const meets = under ? value < limit : value >= limit;
+  if (value === Number.POSITIVE_INFINITY) {
+    return {
+      limit: limitWords,
+      verdict: meets ? 'Meets it: never reached.' : 'Misses it: never reached.',
+      ...beneath,
+    };
+  }
   // The near end: the one on the limit's side of the bracket.
   const near = meets === under ? high : low;
   const margin = marginText(asked.figure, limit - near, time);
