@@ -105,8 +105,12 @@ export function prepareBrackets(system: System, problem: Problem, hooks: Hooks =
     return { low, high: above.wallValues === below.wallValues ? low : galerkinSolution(base, above, hooks) };
   });
   const rate = once(() => rateBounds(base, hooks));
-  const labelled = (start: BracketStart, bracket: Bracketed): Bracketed =>
-    dual(start).takenAs === 'spot' ? { ...bracket, kind: 'estimate' } : bracket;
+  const rounding = once(() => relativeRounding(base, meanSolution()));
+  const labelled = (start: BracketStart, bracket: Bracketed): Bracketed => {
+    // Widths of figures found exactly are rounding themselves.
+    const moved = rounding() > harmless && rounding() * bracket.high > 0.1 * (bracket.high - bracket.low);
+    return moved || dual(start).takenAs === 'spot' ? { ...bracket, kind: 'estimate' } : bracket;
+  };
   const mean = (start: BracketStart): Bracketed => {
     const { solution, disc } = dual(start);
     const bracket = goalBracket(base, meanSolution(), solution);
@@ -131,7 +135,7 @@ export function prepareBrackets(system: System, problem: Problem, hooks: Hooks =
     // r⁴/(192D²) = shift²/3.
     const at = mean(start);
     const add = (time: number): number => 2 * disc.shift * (time - disc.shift / 3);
-    return between(moment.low + add(at.low), moment.high + add(at.high));
+    return labelled(start, between(moment.low + add(at.low), moment.high + add(at.high)));
   };
   return {
     ...{ base, mean, secondMoment, rate },
@@ -154,11 +158,24 @@ export function prepareBrackets(system: System, problem: Problem, hooks: Hooks =
   };
 }
 
+/** Relative errors below this are rounding of any sum. */
+const harmless = 1e-10;
+
+/** Relative error that one rounding of each stored diagonal would bring: 2⁻⁵³ ΣK_ii u_i ÷ Σf_i (METHODS 1). */
+function relativeRounding(
+  { operator, system }: ConsistentSystem,
+  { field, source }: GalerkinSolution,
+): number {
+  let diagonal = 0;
+  for (let i = 0; i < system.size; i++) diagonal += operator.diagonal[i] * field[system.nodeOf[i]];
+  return (2 ** -53 * diagonal) / source.load.reduce((sum, part) => sum + part, 0);
+}
+
 /** √(second moment − mean²) from the ends of both intervals. */
 function deviation(mean: Bracketed, second: Bracketed): Bracketed {
   const low = Math.sqrt(Math.max(0, second.low - mean.high ** 2));
   const high = Math.sqrt(Math.max(0, second.high - Math.max(0, mean.low) ** 2));
-  return between(low, high, mean.kind);
+  return between(low, high, mean.kind === 'guaranteed' ? second.kind : mean.kind);
 }
 
 function dualOf(

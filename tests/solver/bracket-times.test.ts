@@ -86,6 +86,21 @@ describe('times to any share, guaranteed', () => {
     }
   });
 
+  it('with loss at rate 3 everywhere the survival is e^(−3t) times that without [Feynman–Kac]', () => {
+    const strip = rectangleMesh({ x: [0, 1], y: [0, 0.125], columns: 32, rows: 4 });
+    const physics: Problem = {
+      ...problem(constant(1), [reflecting, absorbing(), reflecting, absorbing()]),
+      media: [{ diffusion: constant(1), loss: constant(3) }],
+    };
+    const own = timesOf(strip, physics);
+    for (const left of [0.5, 0.05]) {
+      const { low, high } = own.timeTo(even, left);
+      expect(stripSurvival(low, 0, 1) * Math.exp(-3 * low)).toBeGreaterThanOrEqual(left);
+      expect(stripSurvival(high, 0, 1) * Math.exp(-3 * high)).toBeLessThanOrEqual(left);
+      expect(high / low - 1).toBeLessThan(0.15);
+    }
+  });
+
   it('with variable D under Itô, where an even start is not ∝ m̂, coarse and fine brackets overlap', () => {
     const physics = problem(
       varying((x, y) => 1 + x + y),

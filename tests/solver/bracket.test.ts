@@ -167,7 +167,9 @@ describe('starts and labels', () => {
     };
     expect(prepareBrackets(assemble(square(8), spin), spin)).toBeUndefined();
   });
+});
 
+describe('figures beside the mean', () => {
   it('standard deviation: √(u₂ − u²) lies in its bracket for the strip, 1/12·√(7/5) from everywhere [exact]', () => {
     const walls = [reflecting, absorbing(), reflecting, absorbing()];
     const strip = rectangleMesh({ x: [0, 1], y: [0, 0.25], columns: 40, rows: 10 });
@@ -205,4 +207,26 @@ describe('starts and labels', () => {
     expect(brackets.rate().low).toBeLessThanOrEqual(2.5);
     expect(brackets.rate().high).toBeCloseTo(2.5, 10);
   });
+
+  it.each([
+    [-20, 'guaranteed'],
+    [-40, 'estimate'],
+  ] as const)(
+    'against a drift of %d kT: where rounding acts like a sink, the bracket is an estimate and the rate has no lower bound above the upper',
+    (v, kind) => {
+      const strip = rectangleMesh({ x: [0, 1], y: [0, 0.1], columns: 40, rows: 4 });
+      const physics: Problem = {
+        ...problem(constant(1), [reflecting, absorbing(), reflecting, reflecting]),
+        media: [{ diffusion: constant(1), drift: { kind: 'components', x: constant(v), y: constant(0) } }],
+      };
+      const brackets = bracketsOf(strip, physics);
+      const { low, high } = brackets.rate();
+      expect(low).toBeLessThanOrEqual(high);
+      expect(brackets.mean(even).kind).toBe(kind);
+      // u = (e^a − e^(ax))/a² − (1 − x)/a, a = −v, by substitution; its average.
+      const a = -v;
+      const average = (Math.exp(a) - (Math.exp(a) - 1) / a) / a ** 2 - 1 / (2 * a);
+      if (kind === 'guaranteed') expectHeld(brackets.mean(even), average, 'average');
+    },
+  );
 });
