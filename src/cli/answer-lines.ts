@@ -102,8 +102,9 @@ function figureLines(
   const dimension = asked ? figureDimension(asked.figure) : 'time';
   const figureOf = (row: Answers): AskedAnswer | Answer | undefined =>
     asked ? row.asked[asked.index] : row.mean;
+  // A column is read against its limit, so it takes the limit's unit; without one the largest value's.
   const largest = Math.max(0, ...answers.map((row) => figureOf(row)?.value ?? 0));
-  const unit = readableUnit(largest, dimension, theCase.units);
+  const unit = readableUnit(asked?.limit?.value ?? largest, dimension, theCase.units);
   const show = (value: number): string => formatQuantity(value, dimension, theCase.units, { unit });
   const columns: Column[] = [
     { title: 'layout', align: 'left' },

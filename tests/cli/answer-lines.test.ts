@@ -4,7 +4,7 @@ import { answerLines } from '../../src/cli/answer-lines.ts';
 import { answerLayout } from '../../src/run/answer-layout.ts';
 
 /** What `tarry solve` prints of a strip 2 mm long, D = 1 mm²/s, both layouts solved. */
-function printed(particle: object): string {
+function printed(particle: object, asked: readonly object[] = []): string {
   const theCase = readCase(
     JSON.stringify({
       tarry: 1,
@@ -12,6 +12,7 @@ function printed(particle: object): string {
       units: { length: 'mm', time: 's' },
       drawing: { outline: { rectangle: [0, 0, 2, 0.5] } },
       particle: { diffusion: '1 mm^2/s', ...particle },
+      asked,
       walls: { left: { on: 'outline', where: 'x == 0' }, right: { on: 'outline', where: 'x == 2' } },
       layouts: {
         open: { left: 'absorbing' },
@@ -31,6 +32,15 @@ it('the numbers that rule each layout are printed, a column for each kind that t
   expect(text).toMatch(/\n +coated +6\.00 +\d/);
   expect(text).toMatch(/\n +open +\d\.\d+×10⁻/);
   expect(text).not.toMatch(/With a flow/);
+});
+
+it('a column of times is in the unit of the limit that it is read against', () => {
+  // One absorbing end: L²/(3D) = 4/3 s [Redner 2001, chapter 2].
+  const text = printed({}, [{ figure: 'mean', under: '2500 ms' }]);
+  expect(text).toMatch(/\n +open +1\.333 s +e +meets, 1\.167 s to spare/);
+  expect(printed({}, [{ figure: 'mean', under: '0.9 s' }])).toMatch(
+    /\n +open +1\u202f333 ms +e +misses by 433\.\d ms/,
+  );
 });
 
 it('with drift and loss come Péclet number, the share lost, the caution about flow, and a mean of its own name', () => {
