@@ -202,14 +202,16 @@ function pinTable(data: ReadingsData): HTMLElement {
     { name: '95\u00a0%', of: (pin: Reading) => pin.most },
   ].filter(({ of }) => shown.pins.every((pin) => of(pin) !== undefined));
   const values = shown.pins.map((pin) => columns.map(({ of }) => (of(pin)?.value ?? 0) * time.factor));
-  const decimals = decimalsFor(Math.max(...values.flat()));
+  const decimals = columns.map((_, c) => decimalsFor(Math.max(...values.map((row) => row[c] ?? 0))));
   const rows = shown.pins.map((pin, i) =>
     el(
       'tr',
       {},
       el('td', { class: 'pin-cell' }, el('span', { class: 'pin-ring' }, String(i + 1))),
       el('th', { scope: 'row' }, pin.name),
-      ...(values[i] ?? []).map((value) => el('td', { class: 'figure' }, fixedText(value, decimals))),
+      ...(values[i] ?? []).map((value, c) =>
+        el('td', { class: 'figure' }, fixedText(value, decimals[c] ?? 0)),
+      ),
     ),
   );
   const names = columns.map(({ name }) => name).join(', ');
