@@ -31,6 +31,8 @@ export interface ConsistentSystem {
   readonly fans: Fans;
   readonly tree: DrainTree;
   readonly operator: LinearOperator;
+  /** Asked by every loop over the mesh. */
+  readonly hooks: Hooks;
 }
 
 /**
@@ -52,7 +54,7 @@ export function consistentSystem(system: System, problem: Problem, hooks: Hooks 
   const fans = fansOf(mesh, sides, hooks);
   const operator = assembleOperator(system, geometry, coefficients, sides, edges, hooks);
   const tree = drainTree(sides, coefficients.leastLoss);
-  return { system, problem, geometry, coefficients, sides, fans, tree, operator };
+  return { system, problem, geometry, coefficients, sides, fans, tree, operator, hooks };
 }
 
 /** Mesh node pairs with −a(φ_i, φ_j), and what each row sums to. */

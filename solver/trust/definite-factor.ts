@@ -46,7 +46,7 @@ export function definiteFactor(
       for (let p = 0; p < width; p++) childLocal[p] = localOf[border[from + p]];
       addWaiting(work, order, waiting, top, width, childLocal);
     }
-    if (!eliminate(work, order, pivots, inversePivot, first)) return undefined;
+    if (!eliminate(work, order, pivots, inversePivot, first, hooks)) return undefined;
     let at = factorStart[t];
     for (let j = 0; j < pivots; j++) {
       const column = work.subarray(j * order + j + 1, (j + 1) * order);
@@ -106,8 +106,10 @@ function eliminate(
   pivots: number,
   inversePivot: Float64Array,
   first: number,
+  hooks: Hooks,
 ): boolean {
   for (let j = 0; j < pivots; j++) {
+    if ((j & 7) === 7) stopIfAsked(hooks);
     const base = j * order;
     const pivot = work[base + j];
     if (!(pivot > 0)) return false;

@@ -1,5 +1,4 @@
-import type { Hooks } from '../../mesher/index.ts';
-import { stopIfAsked } from '../linear/stopping.ts';
+import { pollMask, stopIfAsked } from '../linear/stopping.ts';
 import type { ConsistentSystem } from './consistent-system.ts';
 import { endSide, startSide } from './fans.ts';
 import { sideKind } from './wall-sides.ts';
@@ -28,14 +27,12 @@ export function equilibratedFlux(
   gradients: Float64Array,
   residual: Float64Array,
   wallFlux: Float64Array,
-  hooks: Hooks = {},
 ): { readonly flux: Float64Array; readonly leftOver: Float64Array } {
   const flux = new Float64Array(residual.length);
   const inverse = inverseMeans(base);
   const work = new Float64Array(64);
   patches(base, gradients, residual, wallFlux, inverse, flux, work);
   for (let round = 0; round < improvements; round++) {
-    stopIfAsked(hooks);
     improve(base, gradients, inverse, flux);
   }
   return { flux, leftOver: leadAway(base, residual, flux) };
@@ -75,6 +72,7 @@ function patches(
   const { fans, sides, geometry } = base;
   let through = scratch;
   for (let f = 0; f < fans.count; f++) {
+    if ((f & pollMask) === 0) stopIfAsked(base.hooks);
     const begin = fans.start[f];
     const n = fans.start[f + 1] - begin;
     if (through.length <= n) through = new Float64Array(2 * n + 2);
@@ -137,13 +135,14 @@ function circulation(
 
 /** One round over all vertices: each lets the circulation run that makes the whole ‖σ − k̂∇u_h‖ smallest. */
 function improve(
-  { fans, geometry }: ConsistentSystem,
+  { fans, geometry, hooks }: ConsistentSystem,
   gradients: Float64Array,
   inverse: Float64Array,
   flux: Float64Array,
 ): void {
   const { area, offX, offY } = geometry;
   for (let f = 0; f < fans.count; f++) {
+    if ((f & pollMask) === 0) stopIfAsked(hooks);
     if (!fans.turns[f]) continue;
     let slope = 0;
     let curvature = 0;

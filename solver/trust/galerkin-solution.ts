@@ -72,7 +72,7 @@ function gapOf(
   const residual = elementResidual(base, problem, field, hooks);
   const outward = wanted(base, problem, field);
   const gradients = fluxGradients(base, field);
-  const { flux, leftOver } = equilibratedFlux(base, gradients, residual, wallLoads(base, outward), hooks);
+  const { flux, leftOver } = equilibratedFlux(base, gradients, residual, wallLoads(base, outward));
   stopIfAsked(hooks);
   const parts = new Float64Array(5 * geometry.count);
   describeParts(base, field, flux, parts);
@@ -227,7 +227,7 @@ function describeParts(
 
 /** products ← ∫_T k̂⁻¹(σ₁ − k̂∇u₁)·(σ₂ − k̂∇u₂) per triangle, from the parts of two solutions. */
 export function elementProducts(
-  { geometry, coefficients }: ConsistentSystem,
+  { geometry, coefficients, hooks }: ConsistentSystem,
   one: Float64Array,
   two: Float64Array,
   products: Float64Array,
@@ -235,6 +235,7 @@ export function elementProducts(
   const { area, offX, offY, count } = geometry;
   const { per, step, xx, xy, yy } = coefficients;
   for (let t = 0; t < count; t++) {
+    if ((t & pollMask) === 0) stopIfAsked(hooks);
     const q = 3 * t;
     const p = 5 * t;
     let sum = 0;

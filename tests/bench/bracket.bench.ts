@@ -1,9 +1,15 @@
 import { cpus, loadavg } from 'node:os';
 import { type Mesh, remesh } from '../../mesher/index.ts';
-import { assemble, prepare, prepareBrackets } from '../../solver/index.ts';
-import { adaptUntil } from '../../solver/trust/adapt.ts';
-import type { Bracketed } from '../../solver/trust/bracketed.ts';
-import type { Brackets } from '../../solver/trust/brackets.ts';
+import {
+  adaptUntil,
+  assemble,
+  type Bracketed,
+  type BracketStart,
+  type Brackets,
+  prepare,
+  prepareBrackets,
+  prepareSurvivalBrackets,
+} from '../../solver/index.ts';
 import { type BracketCase, type ExactFigure, even, point } from '../solver/bracket-cases.ts';
 import { bracketCases } from '../solver/bracket-polygons.ts';
 import { rectangleMesh } from '../support/grid-mesh.ts';
@@ -105,5 +111,22 @@ for (const name of ['L-A', 'sq-window-mid-0.05', 'rect-halfbottom']) {
     Math.log((last?.nodes ?? 1) / (middle?.nodes ?? 1)) / Math.log((middle?.half ?? 1) / (last?.half ?? 1));
   console.log(
     `${name}, adapting: ${rounds.map(({ outcome, nodes, half }) => `${nodes} nodes ± ${percent(half)} (${outcome})`).join(', ')}; nodes ∝ width^−${exponent.toFixed(2)}`,
+  );
+}
+
+const still = problem(constant(1), [absorbing(), absorbing(), absorbing(), absorbing()]);
+for (const n of [45, 91]) {
+  const mesh = rectangleMesh({ x: [0, 1], y: [0, 1], columns: n, rows: n });
+  const brackets = prepareBrackets(assemble(mesh, still), still) ?? fail('not reversible');
+  const begun = performance.now();
+  const times = prepareSurvivalBrackets(brackets, still) ?? fail('no lower bound of the rate');
+  const words = [0.5, 0.1, 0.05, 0.01].map((left) => {
+    const { low, high } = times.timeTo(even, left);
+    return `${1 - left}: ${percent(high / low - 1)}`;
+  });
+  const spot: BracketStart = { kind: 'spot', x: 0.5, y: 0.5, radius: 0.2 };
+  const { low, high } = times.timeTo(spot, 0.05);
+  console.log(
+    `unit square, ${mesh.nodes.length / 2} nodes, widths of times to a share, even start: ${words.join(', ')}; spot, 0.95: ${percent(high / low - 1)} (${(performance.now() - begun).toFixed(0)} ms in all)`,
   );
 }

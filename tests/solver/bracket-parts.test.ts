@@ -160,3 +160,22 @@ it('where exits touch, wall values lie above the share’s on one side and below
   }
   expect(ramps).toBe(12);
 });
+
+it('asks whether to stop while it solves, equilibrates and bounds the rate, and ends with SOLVING_STOPPED', () => {
+  const physics = problem(constant(1), [absorbing(0), absorbing(1), partly(2, 1), reflecting]);
+  const system = assemble(square(40), physics);
+  let asked = 0;
+  let last = Number.POSITIVE_INFINITY;
+  const brackets = prepareBrackets(system, physics, { stop: () => ++asked >= last });
+  if (!brackets) throw new Error('not reversible');
+  for (const figure of [
+    () => brackets.mean({ kind: 'spot', x: 0.5, y: 0.5, radius: 0.2 }),
+    () => brackets.share(even, 0),
+    () => brackets.rate(),
+  ]) {
+    last = asked + 6;
+    expect(figure).toThrow(expect.objectContaining({ code: 'SOLVING_STOPPED' }));
+    last = Number.POSITIVE_INFINITY;
+    expect(figure).not.toThrow();
+  }
+});
