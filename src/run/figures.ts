@@ -7,7 +7,7 @@ import {
   valueFromStart,
 } from '../../solver/index.ts';
 import type { Asked, Case } from '../case/case.ts';
-import { formatQuantity } from '../case/format-quantity.ts';
+import { formatNumber, formatQuantity } from '../case/format-quantity.ts';
 import type { Answer, Answers, Reading, ShareAnswer, TimeAnswer, Times } from './answers.ts';
 import type { SolvedFields } from './solved-fields.ts';
 import { type Emptying, emptying, type Filling, filling } from './times.ts';
@@ -52,14 +52,19 @@ export function solveFigures(
   hooks: (doing: string, from: number, to: number) => Hooks,
 ): LayoutFigures {
   const { theCase, problem, system, fields, starts, lowestTime } = layout;
+  // Beyond the reach of the second moment the basis overflows too.
+  const canFollow = fields.moments.length > 1;
   const solved: Solved = {
     theCase,
     fields,
-    emptying: emptying(system, watchedInside(theCase, starts), hooks('following the survival', 0, 0.6)),
+    wellDepth: wellDepth(system),
+    emptying: canFollow
+      ? emptying(system, watchedInside(theCase, starts), hooks('following the survival', 0, 0.6))
+      : undefined,
     fillings: new Map(),
     timeIn: timesInRegions(theCase, problem, system, starts, hooks('solving for times in regions', 0.9, 1)),
   };
-  for (const [name, watch] of watchedExits(fields, starts)) {
+  for (const [name, watch] of canFollow ? watchedExits(fields, starts) : []) {
     const field = chanceToEnd(fields, name);
     const found = field && filling(system, field, watch, hooks('following the arrivals', 0.6, 0.9));
     if (found) solved.fillings.set(name, found);
@@ -76,6 +81,8 @@ export function solveFigures(
 interface Solved {
   readonly theCase: Case;
   readonly fields: SolvedFields;
+  /** Range of the drift's potential in kT; 0 where there is none. */
+  readonly wellDepth: number;
   readonly emptying: Emptying | undefined;
   readonly fillings: Map<string, Filling>;
   /** Per region's name: mean time spent there, per mesh node. */
@@ -211,10 +218,8 @@ function arrivalTime(
   return time === undefined ? undefined : estimate(time);
 }
 
-function warningsOf(
-  { theCase, fields, emptying: found, fillings }: Solved,
-  starts: readonly AskedStart[],
-): string[] {
+function warningsOf(solved: Solved, starts: readonly AskedStart[]): string[] {
+  const { theCase, fields, emptying: found, fillings } = solved;
   const warnings: string[] = [];
   if (fields.moments.length < 2) {
     warnings.push('the standard deviation is left out: its square is beyond the largest number');
@@ -223,6 +228,11 @@ function warningsOf(
     warnings.push('times to N % are left out: the decay cannot be followed in double precision');
     return warnings;
   }
+  if (solved.wellDepth > deepest) {
+    warnings.push(
+      `the potential ranges over ${formatNumber(solved.wellDepth, 3)} kT: times to N %, survival and arrivals do not see what leaves before the well is felt, and err by that share; mean, standard deviation and shares do not`,
+    );
+  }
   if (!found.isRough && ![...fillings.values()].some(({ isRough }) => isRough)) return warnings;
   const mean = Math.max(...starts.map(({ weights }) => valueFromStart(weights, fields.meanExitTime)));
   const early = formatQuantity(mean / 1000, 'time', theCase.units);
@@ -230,6 +240,21 @@ function warningsOf(
     `times and shares earlier than about ${early} are rough: so early, against the mean, they would take too many steps`,
   );
   return warnings;
+}
+
+/** Above this the inner product of the basis, weighted by e^−V, no longer sees what is near the top of a well. */
+const deepest = 25;
+
+/** Range of the drift's potential, in kT. */
+function wellDepth({ psi }: System): number {
+  if (!psi) return 0;
+  let low = Number.POSITIVE_INFINITY;
+  let high = Number.NEGATIVE_INFINITY;
+  for (let i = 0; i < psi.length; i++) {
+    low = Math.min(low, psi[i] ?? 0);
+    high = Math.max(high, psi[i] ?? 0);
+  }
+  return high - low;
 }
 
 /** Warns where a time asked for, or the answer to one, is earlier than what the mesh resolves. */

@@ -242,3 +242,36 @@ describe('times before the lowest that the mesh resolves', () => {
     }
   });
 });
+
+describe('wells', () => {
+  /** Up a slope of `depth` kT to the only exit: V = depth·x. */
+  const well = (depth: number) =>
+    firstAnswers(
+      strip({
+        particle: { diffusion: 1, drift: { potential: { expression: `${depth}*x` } } },
+        layouts: { only: { right: 'absorbing' } },
+      }),
+    );
+
+  it('of 20 kT have the times of an exponential with the mean, and no warning [Kramers 1940]', () => {
+    const { mean: found, sd, times, decayTime, warnings } = well(20);
+    expect(off(sd?.value, found.value)).toBeLessThan(1e-4);
+    expect(off(times?.['50 %']?.value, Math.LN2 * found.value)).toBeLessThan(1e-4);
+    expect(off(decayTime?.value, found.value)).toBeLessThan(1e-4);
+    expect(warnings).toEqual([]);
+  });
+
+  it('too deep for early losses to be seen in the times bring a warning', () => {
+    expect(well(60).warnings.join(' ')).toMatch(/^the potential ranges over 60\.0 kT: times to N %/);
+  });
+
+  it('so deep that the second moment is beyond the largest number still have their mean', () => {
+    const answers = well(500);
+    // ∫∫ e^{V(y) − V(z)} dz dy from x to 1 with z < y: e^500/500² but for terms e^−500 smaller.
+    expect(off(answers.mean.value, Math.exp(500) / 500 ** 2)).toBeLessThan(0.05);
+    expect(answers.moments).toHaveLength(1);
+    expect(answers).not.toHaveProperty('sd');
+    expect(answers).not.toHaveProperty('times');
+    expect(answers.warnings.join(' ')).toMatch(/standard deviation is left out.*times to N % are left out/);
+  });
+});
