@@ -17,6 +17,8 @@ export type SolverCode =
   | 'EXIT_TOO_RARE'
   | 'MEMORY_LIMIT'
   | 'NOT_CONVERGED'
+  | 'WALK_NOT_AVAILABLE'
+  | 'WALK_TOO_LONG'
   | 'SOLVING_STOPPED';
 
 /** Where a problem is at fault. Kernels know numbers; `src/run` turns them into names of the drawing. */

@@ -50,3 +50,7 @@ export type { Bracketed } from './trust/bracketed.ts';
 export { type BracketStart, type Brackets, prepareBrackets } from './trust/brackets.ts';
 export type { RateBounds } from './trust/eigenvalue-bounds.ts';
 export { prepareSurvivalBrackets, type SurvivalBrackets } from './trust/survival-brackets.ts';
+export { type WalkLevel, type WalkOptions, type Walks, walk } from './trust/walk.ts';
+export { type WalkGeometry, type WalkProblem, walkGeometry } from './trust/walk-geometry.ts';
+export type { WalkStart } from './trust/walk-starts.ts';
+export { summarise, type WalkMean, type WalkSummary } from './trust/walk-summary.ts';
